@@ -116,8 +116,6 @@ export interface CaseState {
 	};
 	/** entries of a type or version this program does not know: with any, no result may be shown */
 	unknown: { id: string; type: string; version: number }[];
-	/** ids of entries that presented a trial a second time: kept, without effect */
-	repeated: string[];
 }
 
 export interface Pause {
@@ -149,8 +147,7 @@ export function emptyCase(): CaseState {
 			settings: [],
 			items: []
 		},
-		unknown: [],
-		repeated: []
+		unknown: []
 	};
 }
 

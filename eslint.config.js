@@ -27,7 +27,12 @@ function layerRule(layer, forbidden) {
 					patterns: [
 						{
 							group: [
-								...forbidden.flatMap((other) => [`$lib/${other}`, `$lib/${other}/**`, `**/lib/${other}/**`, `../${other}/**`]),
+								...forbidden.flatMap((other) => [
+									`$lib/${other}`,
+									`$lib/${other}/**`,
+									`**/lib/${other}/**`,
+									`../${other}/**`
+								]),
 								'**/routes/**',
 								...outside
 							],

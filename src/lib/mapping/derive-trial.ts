@@ -17,7 +17,9 @@ export function deriveTrial(state: CaseState, id: string): Trial | null {
 	const score = only && scores.length === 1 ? dataOf(only, 'trial-scored') : null;
 	const onsets = standing(record.onsets).map((entry) => dataOf(entry, 'trial-onset'));
 	const excluded: ExclusionReason[] = [
-		...onsets.filter((onset) => !onset.shown).map(({ reason }) => ({ why: 'not-shown', detail: reason ?? null }) as const),
+		...onsets
+			.filter((onset) => !onset.shown)
+			.map(({ reason }) => ({ why: 'not-shown', detail: reason ?? null }) as const),
 		...standing(record.exclusions).map(
 			(entry) => ({ why: 'excluded', detail: dataOf(entry, 'trial-excluded').reason }) as const
 		),

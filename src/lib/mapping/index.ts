@@ -9,7 +9,15 @@ export { verdict, DEFAULT_RULE, type Rule, type SiteVerdict, type Verdict } from
 export { effect, type Scored } from './effect';
 export { combined, stillOpen, type CombinedRow } from './combined';
 export { fold } from './fold';
-export { emptyCase, type CaseState, type ExclusionReason, type Row, type Run, type Tag, type Trial } from './case-state';
+export {
+	emptyCase,
+	type CaseState,
+	type ExclusionReason,
+	type Row,
+	type Run,
+	type Tag,
+	type Trial
+} from './case-state';
 export { sites, tagResults, compareTags, repeatedPresentations, type SiteRow, type TagResult } from './sites';
 export { controlRates, isControl, type ControlRate } from './controls';
 export { caseItems, preparedTasks, type KeptItem } from './case-items';

@@ -1,0 +1,51 @@
+import type { AnyCaseEvent } from '$lib/mapping/events';
+import { refusal, type Body } from '../answer';
+import { faultOf } from './event-schema';
+
+export const MOST_EVENTS = 500;
+export const MOST_BYTES = 256 * 1024;
+
+/**
+ * Reads a request that appends. One bad event refuses the whole request and is named by its index and id.
+ *
+ * @param also a further check of an event that is otherwise good; returns what is wrong with it, or null
+ */
+export async function readAppend(
+	request: Request,
+	also: (event: AnyCaseEvent) => string | null
+): Promise<Body<AnyCaseEvent[]>> {
+	if (Number(request.headers.get('content-length') ?? 0) > MOST_BYTES) return refused(tooMuch());
+	const bytes = await request.arrayBuffer();
+	if (bytes.byteLength > MOST_BYTES) return refused(tooMuch());
+	const events = eventsIn(bytes);
+	if (events === null) return refused(refusal(400, 'The request is not JSON. Nothing was stored.'));
+	if (!Array.isArray(events)) return refused(refusal(422, 'events: a list of entries. Nothing was stored.'));
+	if (events.length > MOST_EVENTS) return refused(tooMuch());
+	for (const [index, event] of events.entries()) {
+		const fault = faultOf(event) ?? also(event as AnyCaseEvent);
+		if (fault !== null) return refused(refusal(422, fault, { index, id: idOf(event) }));
+	}
+	return { ok: true, value: events as AnyCaseEvent[] };
+}
+
+function refused(response: Response): { ok: false; response: Response } {
+	return { ok: false, response };
+}
+
+function tooMuch(): Response {
+	return refusal(413, `At most ${MOST_EVENTS} entries and ${MOST_BYTES / 1024} KiB at once: send it in parts.`);
+}
+
+/** The list of events; undefined when the JSON holds none, null when it is no JSON. */
+function eventsIn(bytes: ArrayBuffer): unknown {
+	try {
+		const body = JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes)) as { events?: unknown } | null;
+		return body?.events;
+	} catch {
+		return null;
+	}
+}
+
+function idOf(event: unknown): unknown {
+	return (event as { id?: unknown } | null)?.id;
+}

@@ -1,0 +1,108 @@
+import type { Database, Statement } from 'better-sqlite3';
+import type { AnyCaseEvent, LogEvent, Receipt } from '$lib/mapping/events';
+import { withConnection } from '../database';
+import type { CaseLogRow } from '../tables';
+import { canonicalJson, chainHash, FIRST_PREVIOUS } from './chain';
+
+export type StoredEvent = AnyCaseEvent & Receipt;
+
+export interface Appended {
+	/** where every event given stands, in the order given */
+	stored: { id: string; position: number }[];
+	/** those that were not in the log before */
+	added: StoredEvent[];
+}
+
+/** An id that stands in the log of the case already, with other content. */
+export class IdTaken extends Error {
+	constructor(
+		readonly index: number,
+		readonly id: string
+	) {
+		super(`entry ${id} is in the case log already, with other content`);
+	}
+}
+
+/**
+ * Appends events to the log of a case, all or none, and returns after SQLite has synced them to disk. An event that
+ * is in the log already keeps its position and is not stored again.
+ *
+ * @param events checked against the schema
+ * @param sender account id, or the id of a patient view
+ * @throws IdTaken, with nothing stored
+ */
+export async function append(code: string, sender: string, events: AnyCaseEvent[]): Promise<Appended> {
+	return await withConnection((connection) =>
+		connection.transaction(() => appendRows(statementsOf(connection), code, sender, events)).immediate()
+	);
+}
+
+function appendRows(statements: Statements, code: string, sender: string, events: AnyCaseEvent[]): Appended {
+	let { position, hash } = statements.head.get(code) ?? { position: 0, hash: FIRST_PREVIOUS };
+	const appended: Appended = { stored: [], added: [] };
+	for (const [index, event] of events.entries()) {
+		const known = statements.byId.get(code, event.id);
+		if (known) {
+			if (canonicalJson(JSON.parse(known.event)) !== canonicalJson(event)) throw new IdTaken(index, event.id);
+			appended.stored.push({ id: event.id, position: known.position });
+			continue;
+		}
+		position++;
+		const receivedAt = new Date().toISOString();
+		hash = chainHash(hash, { case: code, position, receivedAt, sender, event });
+		statements.insert.run(code, position, event.id, receivedAt, sender, JSON.stringify(event), hash);
+		appended.stored.push({ id: event.id, position });
+		appended.added.push({ position, receivedAt, sender, hash, ...event });
+	}
+	return appended;
+}
+
+interface Statements {
+	head: Statement<[string], { position: number; hash: string }>;
+	byId: Statement<[string, string], { position: number; event: string }>;
+	insert: Statement<[string, number, string, string, string, string, string]>;
+}
+
+const prepared = new WeakMap<Database, Statements>();
+
+function statementsOf(connection: Database): Statements {
+	const known = prepared.get(connection);
+	if (known) return known;
+	const statements: Statements = {
+		head: connection.prepare('SELECT position, hash FROM case_log WHERE case_code = ? ORDER BY position DESC LIMIT 1'),
+		byId: connection.prepare('SELECT position, event FROM case_log WHERE case_code = ? AND id = ?'),
+		insert: connection.prepare(
+			`INSERT INTO case_log (case_code, position, id, received_at, sender, event, hash) VALUES (?, ?, ?, ?, ?, ?, ?)`
+		)
+	};
+	prepared.set(connection, statements);
+	return statements;
+}
+
+/** The entries of a case after a position, in order. */
+export async function entriesAfter(code: string, after: number): Promise<StoredEvent[]> {
+	return await withConnection((connection) =>
+		connection
+			.prepare<[string, number], CaseLogRow>(
+				'SELECT * FROM case_log WHERE case_code = ? AND position > ? ORDER BY position'
+			)
+			.all(code, after)
+			.map(toEvent)
+	);
+}
+
+function toEvent(row: CaseLogRow): StoredEvent {
+	const event = JSON.parse(row.event) as AnyCaseEvent;
+	return {
+		position: row.position,
+		receivedAt: row.received_at,
+		sender: row.sender,
+		hash: row.hash,
+		...event
+	};
+}
+
+/** The case log as `fold` reads it. */
+export async function logOf(code: string): Promise<LogEvent[]> {
+	return await entriesAfter(code, 0);
+}

@@ -1,0 +1,14 @@
+import { json } from '@sveltejs/kit';
+import { fold } from '$lib/mapping/fold';
+import { sites, tagResults } from '$lib/mapping/sites';
+import { CLASSES, type ResponseClass } from '$lib/mapping/vocabulary';
+import { refusal } from '$lib/server/answer';
+import { logOf } from '$lib/server/log/log';
+import type { RequestHandler } from './$types';
+
+export const GET: RequestHandler = async ({ locals, url }) => {
+	const asked = (url.searchParams.get('class') ?? 'language') as ResponseClass;
+	if (!CLASSES.includes(asked)) return refusal(422, `class: one of ${CLASSES.join(', ')}`);
+	const state = fold(await logOf(locals.case.code));
+	return json({ sites: sites(state, asked).map(({ trials: _, ...row }) => row), tags: tagResults(state) });
+};

@@ -1,0 +1,46 @@
+import { eventStream, type StreamMessage } from '$lib/server/live/event-stream';
+import { hub, staffRoom } from '$lib/server/live/hub';
+import { lastHeard } from '$lib/server/live/presence';
+import { BOOT, serverNow } from '$lib/server/live/server-clock';
+import { entriesAfter, type StoredEvent } from '$lib/server/log/log';
+import { positionOf } from '$lib/server/log/position';
+import type { RequestHandler } from './$types';
+
+/** The case log from a position on, then every entry as it is stored; what only passes has a name and no id. */
+export const GET: RequestHandler = async ({ locals, url, request }) => {
+	const { code } = locals.case;
+	const after = positionOf(request.headers.get('last-event-id') ?? url.searchParams.get('after'));
+	if (!after.ok) return after.response;
+	let reached = after.position;
+
+	const follow = (send: (message: StreamMessage) => void) => {
+		let missed: StoredEvent[] | null = [];
+		const deliver = (events: StoredEvent[]) => {
+			for (const event of events) {
+				if (event.position <= reached) continue;
+				reached = event.position;
+				send({ id: event.position, data: event });
+			}
+		};
+		// Listen first, then read: what is stored in between waits its turn.
+		const leave = hub.listen(staffRoom(code), {
+			entries: (events) => (missed ? missed.push(...events) : deliver(events)),
+			passing: ({ name, data }) => send({ name, data })
+		});
+		for (const data of lastHeard(code)) send({ name: 'presence', data });
+		entriesAfter(code, reached).then(
+			(events) => {
+				deliver(events);
+				deliver(missed ?? []);
+				missed = null;
+			},
+			(failure: unknown) => {
+				console.error('stream', code, failure);
+				leave();
+			}
+		);
+		return leave;
+	};
+
+	return eventStream(follow, () => ({ now: serverNow(), boot: BOOT, position: reached }));
+};

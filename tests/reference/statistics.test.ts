@@ -59,7 +59,7 @@ describe('false positives expected over a field of sites, two of three', () => {
 });
 
 describe("Fisher's exact test", () => {
-	const HERRICK = 'Herrick et al. 1997, published p = 0.008';
+	const HERRICK = 'Herrick et al., Anesth Analg 1997;84:1280, published p';
 	it.each<[id: string, table: TwoByTwo, alternative: Alternative, printed: string, source: string]>([
 		[
 			'FIS-01',

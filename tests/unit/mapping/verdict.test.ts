@@ -71,6 +71,18 @@ describe('verdict', () => {
 		);
 	});
 
+	it('tells a share that is met from one that lies a hair above', () => {
+		const hair = fc.integer({ min: 1, max: 1e12 });
+		fc.assert(
+			fc.property(fc.integer({ min: 1, max: 12 }), fc.nat(11), hair, (n, below, times) => {
+				const k = below % n;
+				const trials = Array.from({ length: n }, (_, index): Effect => (index < k ? 'disturbed' : 'intact'));
+				expect(verdict(trials, { minTrials: n, share: [k * times, n * times] }).verdict).toBe('positive');
+				expect(verdict(trials, { minTrials: n, share: [k * times + 1, n * times] }).verdict).toBe('negative');
+			})
+		);
+	});
+
 	it('says how many trials there are to do: fewer never give a result, so many always do', () => {
 		fc.assert(
 			fc.property(effects, rule, (trials, rule) => {

@@ -1,22 +1,6 @@
-import type { PatientPresence } from '$lib/stimuli/display';
+import type { Heard } from '$lib/stimuli/presence';
 import { hub, staffRoom } from './hub';
 import { serverNow } from './server-clock';
-
-/** What a staff device tells of itself, each second. */
-export interface StaffPresence {
-	device: string;
-	/** entries that wait to be sent */
-	waiting: number;
-	/** milliseconds the oldest of them has waited */
-	oldest: number;
-	/** runs that this device leads */
-	leads: string | null;
-}
-
-/** The last word of one device; `heardAt` in server time, milliseconds since the epoch. */
-export type Heard =
-	| ({ kind: 'staff'; heardAt: number; account: string } & StaffPresence)
-	| ({ kind: 'patient'; heardAt: number; view: string; connected: boolean } & Partial<PatientPresence>);
 
 const last = new Map<string, Map<string, Heard>>();
 

@@ -10,7 +10,7 @@ import type { RequestHandler } from './$types';
 /** How far this device is with pairing. */
 export const GET: RequestHandler = ({ locals }) => {
 	const view = locals.patientView;
-	return json({ state: view?.state ?? 'none', checkWord: view?.checkWord ?? null });
+	return json({ view: view?.id ?? null, state: view?.state ?? 'none', checkWord: view?.checkWord ?? null });
 };
 
 /** Wrong codes from one address while a code lasts. */
@@ -35,5 +35,5 @@ export const POST: RequestHandler = async ({ request, cookies, url, getClientAdd
 	await tries.delete(from);
 	writePatientToken(cookies, url, claimed.token);
 	hub.passing(staffRoom(claimed.view.case), { name: 'pairing', data: {} });
-	return json({ state: claimed.view.state, checkWord: claimed.view.checkWord });
+	return json({ view: claimed.view.id, state: claimed.view.state, checkWord: claimed.view.checkWord });
 };

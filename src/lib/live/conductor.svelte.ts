@@ -25,7 +25,7 @@ export const ONSET_DUE = 500;
  * is saved on this device before anything is shown.
  */
 export class Conductor {
-	/** the trial that is named large: the newest, or an earlier one somebody went back to */
+	/** an earlier trial that somebody went back to */
 	selected = $state<string | null>(null);
 	/** what stands on the patient view now */
 	showing = $state.raw<{ trial: string; item: string } | null>(null);
@@ -58,10 +58,15 @@ export class Conductor {
 			.sort((a, b) => a.order - b.order);
 	}
 
-	/** The trial that a score goes to. */
+	/**
+	 * The trial that a score goes to, named large on the screen: one that was chosen, else the newest while it waits
+	 * for its score. Otherwise none, so that a stray key scores nothing.
+	 */
 	get trial(): Trial | null {
 		const chosen = this.selected === null ? undefined : this.live.state.trials.get(this.selected);
-		return chosen ?? this.trials.at(-1) ?? null;
+		if (chosen) return chosen;
+		const newest = this.trials.at(-1);
+		return newest?.effect.language === 'pending' ? newest : null;
 	}
 
 	get canRedo(): boolean {

@@ -1,12 +1,14 @@
+import { v4 } from 'uuid';
+
 /** Names this page load: a device's own clock is only comparable within one. */
-export const BOOT = crypto.randomUUID();
+export const BOOT = v4();
 
 /** Names this browser, kept over reloads. The patient view has a name of its own, even in the same browser. */
 export function deviceName(role: 'staff' | 'patient'): string {
 	const key = `wordkeep-device-${role}`;
 	const known = localStorage.getItem(key);
 	if (known) return known;
-	const name = `${role}-${crypto.randomUUID().slice(0, 8)}`;
+	const name = `${role}-${v4().slice(0, 8)}`;
 	localStorage.setItem(key, name);
 	return name;
 }

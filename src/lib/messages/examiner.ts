@@ -125,7 +125,8 @@ export const EXAMINER = {
 	keysHint: 'Choose a line, then press the new key. Letters go by what is printed on them.',
 	keysReset: 'as delivered',
 	pad: 'number pad',
-	padHint: 'Number pad alone: digits choose the tag, Enter shows; while a trial waits, digits score and Enter is intact.',
+	padHint:
+		'Number pad alone: digits choose the tag, Enter shows; while a trial waits, digits score and Enter is intact.',
 	padMore: 'more',
 	home: 'case'
 };

@@ -12,6 +12,14 @@ export class Refused extends Error {
 	) {
 		super(message);
 	}
+
+	/** What is wrong with a field, without its name; null when nothing is. The server says "field: why; field: why". */
+	faultOf(field: string): string | null {
+		const at = this.fields.indexOf(field);
+		if (at < 0) return null;
+		const said = this.message.split('; ')[at] ?? this.message;
+		return said.startsWith(`${field}: `) ? said.slice(field.length + 2) : said;
+	}
 }
 
 /** @throws Refused */

@@ -9,6 +9,7 @@ import {
 } from '@sveltejs/kit';
 import { sequence } from '@sveltejs/kit/hooks';
 import { randomUUID } from 'node:crypto';
+import { offerSetUp } from '$lib/server/accounts/invitations';
 import { readSession } from '$lib/server/accounts/sessions';
 import { caseByCode } from '$lib/server/cases/cases';
 import { db, openDatabase } from '$lib/server/database';
@@ -18,6 +19,10 @@ import { decide, PERMISSIONS, type Decision, type Method } from '$lib/server/per
 
 export const init: ServerInit = async () => {
 	await openDatabase();
+	const token = await offerSetUp();
+	// The port that src/cli/serve.js listens on; the development server has its own.
+	const port = process.env.PORT ?? '5173';
+	if (token) console.log(`Make the first administrator, once: http://localhost:${port}/set-up/${token}`);
 };
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
@@ -85,7 +90,7 @@ const REFUSALS: Record<Exclude<Decision, 'allowed'>, { status: number; reason: s
 function refuse(event: RequestEvent, decision: Exclude<Decision, 'allowed'>): Response {
 	const isPage = !event.route.id?.startsWith('/api/');
 	if (isPage && decision === 'sign-in-first') {
-		redirect(303, `/sign-in?to=${encodeURIComponent(event.url.pathname)}`);
+		redirect(303, `/sign-in?to=${encodeURIComponent(event.url.pathname + event.url.search)}`);
 	}
 	const { status, reason } = REFUSALS[decision];
 	if (isPage) error(status, reason);

@@ -20,3 +20,5 @@ export const TABLE = {
 	count: (shown: number, all: number) => (shown === all ? `${all} in all` : `${shown} of ${all}`),
 	nothingFound: (sought: string) => `Nothing here contains "${sought}". Search for less.`
 };
+
+export const NO_ANSWER = 'The server did not answer. What you typed is still here: check the connection and try again.';

@@ -52,11 +52,6 @@ export async function endSession(cookies: Cookies, url: URL, session: string): P
 	cookies.delete(cookieName(url), { path: '/', secure: isSecure(url) });
 }
 
-/** Ends every session of an account: its password was changed, or it was disabled. */
-export async function endSessionsOf(account: string): Promise<void> {
-	await lucia.invalidateUserSessions(account);
-}
-
 const A_DAY = 86_400;
 
 function writeCookie(cookies: Cookies, url: URL, value: string): void {

@@ -7,21 +7,25 @@ import { createServer } from 'node:http';
  * addresses, so every request is taken under the address and protocol it really came by.
  *
  * @param {{ port: number, host: string }} options
- * @returns {Promise<import('node:http').Server>} once it listens
+ * @returns {Promise<import('node:http').Server>} once it answers
  */
 export async function serve({ port, host }) {
 	process.env.PROTOCOL_HEADER = 'x-forwarded-proto';
 	process.env.PORT = String(port);
-	const { handler } = await import(new URL('../../build/handler.js', import.meta.url).href);
+	/** @type {Promise<import('../../build/handler.js')> | undefined} */
+	let application;
 	const server = createServer((request, response) => {
 		request.headers['x-forwarded-proto'] = 'http';
-		handler(request, response);
+		void application?.then(({ handler }) => handler(request, response));
 	});
+	// The port first: when it is taken nothing else must have happened.
 	await new Promise((listening, failed) => {
 		server.once('error', failed);
 		server.listen(port, host, () => listening(undefined));
 	});
 	for (const signal of ['SIGINT', 'SIGTERM']) process.once(signal, () => stop(server));
+	application = import(new URL('../../build/handler.js', import.meta.url).href);
+	await application;
 	return server;
 }
 

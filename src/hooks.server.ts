@@ -13,15 +13,17 @@ import { offerSetUp } from '$lib/server/accounts/invitations';
 import { readSession } from '$lib/server/accounts/sessions';
 import { caseByCode } from '$lib/server/cases/cases';
 import { db, openDatabase } from '$lib/server/database';
+import { demo } from '$lib/server/demo/seed';
 import { readPatientToken } from '$lib/server/live/patient-cookie';
 import { patientViewByToken } from '$lib/server/live/patient-views';
 import { decide, PERMISSIONS, type Decision, type Method } from '$lib/server/permissions';
 
 export const init: ServerInit = async () => {
 	await openDatabase();
-	const token = await offerSetUp();
 	// The port that src/cli/serve.js listens on; the development server has its own.
 	const port = process.env.PORT ?? '5173';
+	if (process.env.WORDKEEP_DEMO) console.log(await demo(port));
+	const token = await offerSetUp();
 	if (token) console.log(`Make the first administrator, once: http://localhost:${port}/set-up/${token}`);
 };
 

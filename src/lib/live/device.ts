@@ -1,3 +1,4 @@
+// Not crypto.randomUUID: a page that came over plain http from another computer of the network does not have it.
 import { v4 } from 'uuid';
 
 /** Names this page load: a device's own clock is only comparable within one. */

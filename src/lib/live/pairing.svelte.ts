@@ -1,77 +1,101 @@
-/** A patient view as the staff see it. */
-export interface PairedView {
-	id: string;
-	state: 'offered' | 'claimed' | 'confirmed' | 'ended';
-	/** shown on both screens */
+import { readCode } from '$lib/stimuli/pairing-code';
+
+interface PairingAnswer {
+	view: string | null;
+	state: 'none' | 'offered' | 'claimed' | 'confirmed' | 'ended';
 	checkWord: string | null;
 }
 
-export interface Offer {
-	id: string;
-	code: string;
-	expiresAt: string;
-	/** addresses with the code, those that other devices reach first */
-	links: string[];
+const ADDRESS = '/api/patient/pairing';
+const ASK_EVERY = 1000;
+
+/** Asks the server how far this screen is with pairing; null when it is not reached. */
+export async function askPairing(): Promise<PairingAnswer | null> {
+	try {
+		const response = await fetch(ADDRESS, { cache: 'no-store' });
+		return response.ok ? ((await response.json()) as PairingAnswer) : null;
+	} catch {
+		return null;
+	}
 }
 
-/** Pairing a patient view with a case, from the examiner's side. */
+/** The way of a screen to its case: a code, then the examiner's word. */
 export class Pairing {
-	active = $state.raw<PairedView | null>(null);
-	waiting = $state.raw<PairedView | null>(null);
-	offer = $state.raw<Offer | null>(null);
-	fault = $state<string | null>(null);
+	step = $state<'asking' | 'code' | 'waiting' | 'paired'>('asking');
+	/** the id of the view, once paired */
+	view = $state<string | null>(null);
+	/** what both screens show while the examiner's word is awaited */
+	checkWord = $state<string | null>(null);
+	/** why the last code was not taken, in the server's words; `not-reached` when it was not reached */
+	refusal = $state<string | 'not-reached' | null>(null);
+	/** the examiner has ended this view, or did not take it */
+	ended = $state(false);
+	#timer: ReturnType<typeof setTimeout> | undefined;
 
-	#url: string;
-
-	constructor(code: string, views: { active: PairedView | null; waiting: PairedView | null }) {
-		this.#url = `/api/cases/${code}/patient-view`;
-		this.active = views.active;
-		this.waiting = views.waiting;
+	/** Begins with the code of a link, or with what this browser was paired with before. */
+	async begin(text: string): Promise<void> {
+		const code = readCode(text);
+		if (code && (await this.give(code))) return;
+		await this.#ask();
 	}
 
-	/** Offers a new code. */
-	async begin(): Promise<void> {
-		this.offer = await this.#ask<Offer>('POST');
+	/** Gives a code; true when the server took it. */
+	async give(code: string): Promise<boolean> {
+		this.refusal = null;
+		this.ended = false;
+		const answer = await send(code);
+		if (typeof answer === 'string') this.refusal = answer;
+		else this.#hear(answer);
+		return typeof answer !== 'string';
 	}
 
-	/** Opens the patient view in a second window of this computer. */
-	openHere(): void {
-		if (this.offer) window.open(`/patient#${this.offer.code}`, 'wordkeep-patient', 'popup,width=1280,height=800');
+	/** Goes back to the code, for another one. */
+	restart({ ended }: { ended: boolean }): void {
+		clearTimeout(this.#timer);
+		this.ended = ended;
+		this.view = null;
+		this.step = 'code';
 	}
 
-	/** Asks how far pairing is; call it when the stream says that there is news. */
-	async refresh(): Promise<void> {
-		const views = await this.#ask<{ active: PairedView | null; waiting: PairedView | null }>('GET');
-		if (!views) return;
-		if (views.active?.id !== this.active?.id) this.active = views.active;
-		this.waiting = views.waiting;
-		if (this.waiting === null || this.waiting.id !== this.offer?.id) this.offer = null;
+	stop(): void {
+		clearTimeout(this.#timer);
 	}
 
-	/** Says that the device that waits is the right one. */
-	async confirm(): Promise<void> {
-		if (!this.waiting) return;
-		const confirmed = await this.#ask<PairedView>('PUT', { id: this.waiting.id });
-		if (confirmed) await this.refresh();
+	async #ask(): Promise<void> {
+		const answer = await askPairing();
+		if (answer) this.#hear(answer);
+		else this.#askAgain();
 	}
 
-	async end(): Promise<void> {
-		await this.#ask('DELETE');
-		await this.refresh();
+	#askAgain(): void {
+		clearTimeout(this.#timer);
+		this.#timer = setTimeout(() => void this.#ask(), ASK_EVERY);
 	}
 
-	async #ask<T>(method: string, body?: unknown): Promise<T | null> {
-		try {
-			const response = await fetch(this.#url, {
-				method,
-				...(body === undefined ? {} : { body: JSON.stringify(body), headers: { 'content-type': 'application/json' } })
-			});
-			const answer = response.status === 204 ? null : ((await response.json()) as T & { error?: string });
-			this.fault = response.ok ? null : (answer?.error ?? response.statusText);
-			return response.ok ? answer : null;
-		} catch {
-			this.fault = 'The server is not reached. Nothing was changed.';
-			return null;
+	#hear({ view, state, checkWord }: PairingAnswer): void {
+		this.checkWord = checkWord;
+		if (state === 'confirmed') {
+			this.view = view;
+			this.step = 'paired';
+		} else if (state === 'claimed') {
+			this.step = 'waiting';
+			this.#askAgain();
+		} else {
+			this.restart({ ended: this.step === 'waiting' });
 		}
+	}
+}
+
+async function send(code: string): Promise<PairingAnswer | string> {
+	try {
+		const response = await fetch(ADDRESS, {
+			method: 'POST',
+			headers: { 'content-type': 'application/json' },
+			body: JSON.stringify({ code })
+		});
+		const answer: unknown = await response.json();
+		return response.ok ? (answer as PairingAnswer) : (answer as { error: string }).error;
+	} catch {
+		return 'not-reached';
 	}
 }

@@ -1,4 +1,5 @@
 import { createHash, randomBytes, randomInt, randomUUID } from 'node:crypto';
+import { normalCode } from '$lib/stimuli/pairing-code';
 import { db } from '../database';
 import type { PatientViewRow } from '../tables';
 
@@ -20,15 +21,6 @@ const LETTERS = '0123456789ABCDEFGHJKMNPQRSTVWXYZ';
 function newCode(): string {
 	const letters = Array.from({ length: 8 }, () => LETTERS.charAt(randomInt(32))).join('');
 	return `${letters.slice(0, 4)}-${letters.slice(4)}`;
-}
-
-/** What somebody typed, as it was printed: any case, O for 0, I and L for 1, with or without the dash. */
-function normalCode(code: string): string {
-	return code
-		.toUpperCase()
-		.replace(/[^0-9A-Z]/g, '')
-		.replaceAll('O', '0')
-		.replace(/[IL]/g, '1');
 }
 
 function sha256(text: string): string {

@@ -1,0 +1,14 @@
+import { json } from '@sveltejs/kit';
+import { refusal } from '$lib/server/answer';
+import { findSet, LibraryMissing } from '$lib/server/library';
+import type { RequestHandler } from './$types';
+
+export const GET: RequestHandler = async ({ params }) => {
+	try {
+		const set = await findSet(params.set);
+		return set ? json(set) : refusal(404, `There is no item set ${params.set}.`);
+	} catch (failure) {
+		if (failure instanceof LibraryMissing) return refusal(503, failure.message);
+		throw failure;
+	}
+};

@@ -12,7 +12,7 @@ import { createServer } from 'node:http';
 export async function serve({ port, host }) {
 	process.env.PROTOCOL_HEADER = 'x-forwarded-proto';
 	process.env.PORT = String(port);
-	/** @type {Promise<import('../../build/handler.js')> | undefined} */
+	/** @type {Promise<{ handler: import('node:http').RequestListener }> | undefined} */
 	let application;
 	const server = createServer((request, response) => {
 		request.headers['x-forwarded-proto'] = 'http';

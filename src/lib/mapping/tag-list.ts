@@ -50,6 +50,9 @@ export function nameForNewSpot(tag: string, used: ReadonlySet<string>): string |
 
 /** The number that comes next in the row: one more than the highest one used. */
 export function nextNumber(used: Iterable<string>): string {
-	const highest = [...used].filter((tag) => /^\d+/.test(tag)).sort(compareTags).at(-1);
+	const highest = [...used]
+		.filter((tag) => /^\d+/.test(tag))
+		.sort(compareTags)
+		.at(-1);
 	return String(highest === undefined ? 1 : Number.parseInt(highest, 10) + 1);
 }

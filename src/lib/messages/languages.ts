@@ -10,7 +10,20 @@ const A = 97;
 const LETTERS = Array.from({ length: 26 }, (_, i) => String.fromCharCode(A + i));
 
 /** Forms that differ enough for items of their own; any other one can be typed as its tag. */
-const REGIONAL = ['de-AT', 'de-CH', 'en-GB', 'en-US', 'es-419', 'es-ES', 'fr-CA', 'nl-BE', 'pt-BR', 'pt-PT', 'zh-Hans', 'zh-Hant'];
+const REGIONAL = [
+	'de-AT',
+	'de-CH',
+	'en-GB',
+	'en-US',
+	'es-419',
+	'es-ES',
+	'fr-CA',
+	'nl-BE',
+	'pt-BR',
+	'pt-PT',
+	'zh-Hans',
+	'zh-Hant'
+];
 
 let known: LanguageOption[] | undefined;
 
@@ -25,9 +38,7 @@ export function allLanguages(): LanguageOption[] {
 			if (tag && names.of(tag)) tags.add(tag);
 		}
 	}
-	known = [...tags]
-		.map((tag) => ({ tag, name: languageName(tag) }))
-		.sort((a, b) => a.name.localeCompare(b.name, 'en'));
+	known = [...tags].map((tag) => ({ tag, name: languageName(tag) })).sort((a, b) => a.name.localeCompare(b.name, 'en'));
 	return known;
 }
 
@@ -41,7 +52,9 @@ export function findLanguages(text: string, leaveOut: readonly string[] = []): L
 	if (sought === '') return open;
 	const typed = languageOf(text.trim());
 	const begins = open.filter(({ name }) => name.toLowerCase().startsWith(sought));
-	const contains = open.filter(({ name }) => !begins.some((b) => b.name === name) && name.toLowerCase().includes(sought));
+	const contains = open.filter(
+		({ name }) => !begins.some((b) => b.name === name) && name.toLowerCase().includes(sought)
+	);
 	const found = [...begins, ...contains];
 	if (!typed || leaveOut.includes(typed.tag)) return found;
 	return [typed, ...found.filter(({ tag }) => tag !== typed.tag)];

@@ -15,24 +15,26 @@ function itemKey({ id, task, language }: TaskLanguage & { id: string }): string 
 	return `${id} ${task} ${language}`;
 }
 
-/** Every item copied into the case, in the order it was copied; a later copy of an item replaces the earlier one. */
+/**
+ * Every item copied into the case, in the order it was copied; a later copy of an item replaces the earlier one. The last
+ * decision on an item holds, were it made before the item was copied or copied again.
+ */
 export function caseItems(state: CaseState): KeptItem[] {
-	const items = new Map<string, KeptItem>();
+	const copies = new Map<string, Omit<KeptItem, 'kept' | 'reason'>>();
+	const decisions = new Map<string, Pick<KeptItem, 'kept' | 'reason'>>();
 	for (const entry of standing(state.history.items)) {
 		if (entry.event.type === 'items-copied') {
-			const { set, version, task, language, leadIn, items: copied } = dataOf(entry, 'items-copied');
-			for (const item of copied) {
-				const key = itemKey({ id: item.id, task, language });
-				const { kept = true, reason = null } = items.get(key) ?? {};
-				items.set(key, { ...item, task, language, set, version, leadIn, kept, reason });
+			const { set, version, task, language, leadIn, items } = dataOf(entry, 'items-copied');
+			for (const item of items) {
+				copies.set(itemKey({ id: item.id, task, language }), { ...item, task, language, set, version, leadIn });
 			}
-			continue;
+		} else {
+			const { item, task, language, keep, reason } = dataOf(entry, 'item-decided');
+			decisions.set(itemKey({ id: item, task, language }), { kept: keep, reason: reason ?? null });
 		}
-		const { item, task, language, keep, reason } = dataOf(entry, 'item-decided');
-		const known = items.get(itemKey({ id: item, task, language }));
-		if (known) Object.assign(known, { kept: keep, reason: reason ?? null });
 	}
-	return [...items.values()];
+	const undecided = { kept: true, reason: null };
+	return [...copies].map(([key, copy]) => ({ ...copy, ...(decisions.get(key) ?? undecided) }));
 }
 
 /** The tasks and languages the case has items for, in the order they were copied. */

@@ -6,10 +6,9 @@ import type { Effect, Purpose, ResponseClass, Score, TagKind } from './vocabular
 /** One event in the log, with what later entries did to it. */
 export interface Entry {
 	event: LogEvent;
-	/** place in the log, from 0 */
+	/** its position; for an entry that still waits on its device, a number after every position, in the order of making */
 	order: number;
 	withdrawn: boolean;
-	withdrawnBy: Entry[];
 }
 
 /** Every entry that speaks of one trial, in log order, whatever has become of it. */
@@ -33,7 +32,7 @@ export interface Trial {
 	id: string;
 	/** id of the entry that presented it */
 	entry: string;
-	/** place of that entry in the log */
+	/** place of that entry in the log, as in `Entry` */
 	order: number;
 	at: string;
 	device: string;
@@ -95,6 +94,10 @@ export interface CaseState {
 	/** highest position folded; 0 for none */
 	position: number;
 	entries: Map<string, Entry>;
+	/** entries folded before the log had them, in the order they were made */
+	waiting: Entry[];
+	/** withdrawals, by the id of the entry they name */
+	withdrawals: Map<string, Entry[]>;
 	/** entries that name a score as replaced, by the id of that score */
 	replacements: Map<string, Entry[]>;
 	records: Map<string, TrialRecord>;
@@ -113,8 +116,9 @@ export interface CaseState {
 		protocol: Entry[];
 		settings: Entry[];
 		items: Entry[];
+		unknown: Entry[];
 	};
-	/** entries of a type or version this program does not know: with any, no result may be shown */
+	/** standing entries of a type or version this program does not know: with any, no result may be shown */
 	unknown: { id: string; type: string; version: number }[];
 }
 
@@ -130,6 +134,8 @@ export function emptyCase(): CaseState {
 	return {
 		position: 0,
 		entries: new Map(),
+		waiting: [],
+		withdrawals: new Map(),
 		replacements: new Map(),
 		records: new Map(),
 		trials: new Map(),
@@ -145,10 +151,16 @@ export function emptyCase(): CaseState {
 			pauses: new Map(),
 			protocol: [],
 			settings: [],
-			items: []
+			items: [],
+			unknown: []
 		},
 		unknown: []
 	};
+}
+
+/** The trials of the case in log order, which is not the order in which the map holds them. */
+export function trialsInOrder(state: CaseState): Trial[] {
+	return [...state.trials.values()].sort((a, b) => a.order - b.order);
 }
 
 /** The entries of a list that nothing has taken back. */

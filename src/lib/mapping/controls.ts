@@ -1,4 +1,4 @@
-import type { CaseState, Trial } from './case-state';
+import { trialsInOrder, type CaseState, type Trial } from './case-state';
 import type { TaskLanguage } from './events';
 import type { ResponseClass } from './vocabulary';
 
@@ -11,8 +11,8 @@ export interface ControlRate extends TaskLanguage {
 /** Errors without stimulation in the mapping, for each task and language, in the order they were first seen. */
 export function controlRates(state: CaseState, asked: ResponseClass = 'language'): ControlRate[] {
 	const rates = new Map<string, ControlRate>();
-	for (const trial of state.trials.values()) {
-		if (!isControl(trial)) continue;
+	for (const trial of trialsInOrder(state)) {
+		if (!isControl(trial, asked)) continue;
 		const effect = trial.effect[asked];
 		if (effect !== 'disturbed' && effect !== 'intact') continue;
 		const key = `${trial.task} ${trial.language}`;
@@ -24,7 +24,10 @@ export function controlRates(state: CaseState, asked: ResponseClass = 'language'
 	return [...rates.values()];
 }
 
-/** A trial of the mapping without stimulation, at a tag or at none. */
-export function isControl(trial: Trial): boolean {
-	return !trial.stimulated && trial.purpose === 'mapping' && trial.item !== null;
+/**
+ * A trial of the mapping without stimulation, at a tag or at none. One without an item (a movement, a sensation) says
+ * nothing of language, as in the rows.
+ */
+export function isControl(trial: Trial, asked: ResponseClass = 'language'): boolean {
+	return !trial.stimulated && trial.purpose === 'mapping' && (asked === 'speech-motor' || trial.item !== null);
 }

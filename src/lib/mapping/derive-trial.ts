@@ -55,9 +55,12 @@ export function deriveTrial(state: CaseState, id: string): Trial | null {
 function corrected(presented: Presented, corrections: Entry[]): Presented {
 	const changes = standing(corrections);
 	if (changes.length === 0) return presented;
-	const result = { ...presented };
-	for (const entry of changes) Object.assign(result, dataOf(entry, 'trial-corrected'));
-	return result;
+	return Object.assign({ ...presented }, ...changes.map((entry) => given(dataOf(entry, 'trial-corrected'))));
+}
+
+/** A field that is there without a value is not given: it is gone once the entry has been sent. */
+function given<T extends object>(data: T): Partial<T> {
+	return Object.fromEntries(Object.entries(data).filter(([, value]) => value !== undefined)) as Partial<T>;
 }
 
 /** A score stands until one that names it arrives; a score that names itself replaces nothing. */

@@ -25,27 +25,43 @@ class Dirty {
 	readonly trials = new Set<string>();
 	/** every trial: the protocol or a pause has changed */
 	all = false;
+	/** the entries this program does not know */
+	unknown = false;
 }
 
 function add(state: CaseState, event: LogEvent, dirty: Dirty): void {
 	if (event.position !== undefined && event.position > state.position) state.position = event.position;
 	const known = state.entries.get(event.id);
 	if (known) {
-		if (known.event.position === undefined && event.position !== undefined) {
-			known.event = event;
-			update(state, known, dirty);
-		}
+		if (known.event.position === undefined && event.position !== undefined) receive(state, known, event, dirty);
 		return;
 	}
-	const entry: Entry = { event, order: state.entries.size, withdrawn: false, withdrawnBy: [] };
+	const order = event.position ?? (state.waiting.at(-1)?.order ?? FIRST_WAITING - 1) + 1;
+	const entry: Entry = { event, order, withdrawn: false };
 	state.entries.set(event.id, entry);
-	if (!isKnown(event)) {
-		state.unknown.push({ id: event.id, type: event.type, version: event.v ?? 1 });
-		return;
-	}
-	file(state, entry, dirty);
+	if (event.position === undefined) state.waiting.push(entry);
+	take(state, entry, dirty);
+}
+
+/** The log has an entry that was folded while it waited: from now on it stands where its position says. */
+function receive(state: CaseState, entry: Entry, event: LogEvent, dirty: Dirty): void {
+	remove(state.waiting, entry);
+	for (const list of placesOf(state, entry)) remove(list, entry);
+	entry.event = event;
+	entry.order = event.position ?? entry.order;
+	take(state, entry, dirty);
+}
+
+/** Puts an entry in its place among the others and brings up to date whatever depends on it. */
+function take(state: CaseState, entry: Entry, dirty: Dirty): void {
+	for (const list of placesOf(state, entry)) insert(list, entry);
+	restand(state, entry, dirty);
+	restand(state, withdrawnBy(state, entry), dirty);
 	update(state, entry, dirty);
 }
+
+/** Entries that wait on their device come after every position a log can reach. */
+const FIRST_WAITING = 2 ** 40;
 
 const TYPES: ReadonlySet<string> = new Set(EVENT_TYPES);
 const KNOWN_SCORES: ReadonlySet<string> = new Set(SCORES);
@@ -53,90 +69,97 @@ const KNOWN_SCORES: ReadonlySet<string> = new Set(SCORES);
 function isKnown(event: LogEvent): boolean {
 	if (!TYPES.has(event.type) || (event.v ?? 1) !== 1) return false;
 	if (event.type !== 'trial-scored') return true;
-	return [event.data.score, ...(event.data.also ?? [])].every((score) => KNOWN_SCORES.has(score));
+	const { score, also } = event.data;
+	return KNOWN_SCORES.has(score) && (also === undefined || also.every((other) => KNOWN_SCORES.has(other)));
 }
 
-/** Puts an entry beside the others on its subject. */
-function file(state: CaseState, entry: Entry, dirty: Dirty): void {
-	const { event } = entry;
+/** The lists, each in log order, that hold an entry beside the others on its subject. */
+function placesOf(state: CaseState, { event }: Entry): Entry[][] {
+	if (!isKnown(event)) return [state.history.unknown];
 	switch (event.type) {
-		case 'trial-presented': {
-			recordOf(state, event.data.trial).presented.push(entry);
+		case 'trial-presented':
 			if (event.data.run !== undefined) setOf(state.trialsOfRun, event.data.run).add(event.data.trial);
-			return;
-		}
+			return [recordOf(state, event.data.trial).presented];
 		case 'trial-corrected':
-			recordOf(state, event.data.trial).corrected.push(entry);
-			return;
+			return [recordOf(state, event.data.trial).corrected];
 		case 'trial-onset':
-			recordOf(state, event.data.trial).onsets.push(entry);
-			return;
+			return [recordOf(state, event.data.trial).onsets];
 		case 'trial-scored':
-			recordOf(state, event.data.trial).scores.push(entry);
-			for (const replaced of event.data.corrects) listOf(state.replacements, replaced).push(entry);
-			return;
+			return [
+				recordOf(state, event.data.trial).scores,
+				...event.data.corrects.map((replaced) => listOf(state.replacements, replaced))
+			];
 		case 'trial-excluded':
-			recordOf(state, event.data.trial).exclusions.push(entry);
-			return;
+			return [recordOf(state, event.data.trial).exclusions];
 		case 'stimulation-started':
-			if (event.data.trial !== undefined) recordOf(state, event.data.trial).stimulations.push(entry);
-			return;
+			return event.data.trial === undefined ? [] : [recordOf(state, event.data.trial).stimulations];
 		case 'entry-withdrawn':
-			withdraw(state, entry, dirty);
-			return;
+			return [listOf(state.withdrawals, event.data.entry)];
 		case 'tag-placed':
 		case 'tag-removed':
-			listOf(state.history.tags, event.data.tag).push(entry);
-			return;
+			return [listOf(state.history.tags, event.data.tag)];
 		case 'run-opened':
 		case 'run-closed':
-			listOf(state.history.runs, event.data.run).push(entry);
-			return;
+			return [listOf(state.history.runs, event.data.run)];
 		case 'pause-opened':
 		case 'pause-closed':
-			listOf(state.history.pauses, event.data.pause).push(entry);
-			return;
+			return [listOf(state.history.pauses, event.data.pause)];
 		case 'protocol-set':
-			state.history.protocol.push(entry);
-			return;
+			return [state.history.protocol];
 		case 'stimulation-settings':
-			state.history.settings.push(entry);
-			return;
+			return [state.history.settings];
 		case 'items-copied':
 		case 'item-decided':
-			state.history.items.push(entry);
-			return;
+			return [state.history.items];
 		case 'stimulation-ended':
-			return;
+			return [];
 	}
 }
 
-/** Takes back an entry before it in the log; one that comes later, or never, is not touched. */
-function withdraw(state: CaseState, withdrawal: Entry, dirty: Dirty): void {
-	const target = state.entries.get(dataOf(withdrawal, 'entry-withdrawn').entry);
-	if (!target || target === withdrawal) return;
-	target.withdrawnBy.push(withdrawal);
-	restand(state, target, dirty);
+function insert(list: Entry[], entry: Entry): void {
+	let place = list.length;
+	while (place > 0 && (list[place - 1] as Entry).order > entry.order) place--;
+	if (place === list.length) list.push(entry);
+	else list.splice(place, 0, entry);
+}
+
+function remove(list: Entry[], entry: Entry): void {
+	const place = list.indexOf(entry);
+	if (place !== -1) list.splice(place, 1);
+}
+
+/** The entry that a withdrawal names, wherever it stands. */
+function withdrawnBy(state: CaseState, { event }: Entry): Entry | undefined {
+	return event.type === 'entry-withdrawn' && isKnown(event) ? state.entries.get(event.data.entry) : undefined;
 }
 
 /**
- * Works out whether an entry stands after one that names it has come or gone, and follows a chain of withdrawals of
- * withdrawals down to what it is about. Withdrawals name earlier entries only, so the chain ends.
+ * Works out whether an entry stands after one that names it has come, gone or moved, and follows a chain of withdrawals
+ * of withdrawals down to what it is about. A withdrawal acts on entries before it only, so the chain ends.
  */
-function restand(state: CaseState, first: Entry, dirty: Dirty): void {
-	let entry: Entry | undefined = first;
+function restand(state: CaseState, first: Entry | undefined, dirty: Dirty): void {
+	let entry = first;
 	while (entry) {
-		const withdrawn: boolean = entry.withdrawnBy.some((other) => !other.withdrawn);
+		const withdrawn = isWithdrawn(state, entry);
 		if (withdrawn === entry.withdrawn) return;
 		entry.withdrawn = withdrawn;
 		update(state, entry, dirty);
-		entry = entry.event.type === 'entry-withdrawn' ? state.entries.get(entry.event.data.entry) : undefined;
+		entry = withdrawnBy(state, entry);
 	}
+}
+
+function isWithdrawn(state: CaseState, entry: Entry): boolean {
+	const by = state.withdrawals.get(entry.event.id);
+	return by !== undefined && by.some((other) => !other.withdrawn && other.order > entry.order);
 }
 
 /** Brings up to date what an entry that has come, gone or come back is about. */
 function update(state: CaseState, entry: Entry, dirty: Dirty): void {
 	const { event } = entry;
+	if (!isKnown(event)) {
+		dirty.unknown = true;
+		return;
+	}
 	switch (event.type) {
 		case 'trial-presented':
 		case 'trial-corrected':
@@ -221,6 +244,9 @@ function updatePause(state: CaseState, pause: string): void {
 
 /** Works out again every trial that was touched, then every row that one of them is or was in. */
 function settle(state: CaseState, dirty: Dirty): void {
+	if (dirty.unknown) {
+		state.unknown = standing(state.history.unknown).map(({ event: { id, type, v = 1 } }) => ({ id, type, version: v }));
+	}
 	const rows = new Set<string>();
 	for (const id of dirty.all ? state.records.keys() : dirty.trials) {
 		const before = state.trials.get(id);

@@ -26,7 +26,7 @@ export function moveTrial(state: CaseState, before: Trial | undefined, after: Tr
 		if (from !== null) keys.add(from);
 		if (to !== null) keys.add(to);
 		if (before && from !== null && from !== to) leave(state.rows[asked], from, before.id);
-		if (makesRow(after, asked) && to !== null) enter(state, asked, to, after);
+		if (makesRow(after, asked) && to !== null && from !== to) enter(state, asked, to, after);
 	}
 	return [...keys];
 }
@@ -42,18 +42,7 @@ function enter(state: CaseState, asked: ResponseClass, key: string, trial: Trial
 	const rows = state.rows[asked];
 	const row = rows.get(key) ?? emptyRow(trial, state);
 	rows.set(key, row);
-	const last = row.trials.at(-1);
-	if (last === trial.id) return;
-	if (last !== undefined && orderOf(state, last) > trial.order) {
-		const others = row.trials.filter((id) => id !== trial.id);
-		row.trials = [...others, trial.id].sort((a, b) => orderOf(state, a) - orderOf(state, b));
-	} else {
-		row.trials.push(trial.id);
-	}
-}
-
-function orderOf(state: CaseState, id: string): number {
-	return state.trials.get(id)?.order ?? Infinity;
+	row.trials.push(trial.id);
 }
 
 function emptyRow(trial: Trial & { tag: string }, state: CaseState): Row {
@@ -61,16 +50,16 @@ function emptyRow(trial: Trial & { tag: string }, state: CaseState): Row {
 	return { tag, task, language, ...verdict([], state.protocol.rule), kinds: {}, milliamps: null, trials: [] };
 }
 
-/** Works out the result of one row from its trials and the rule in force. */
+/** Puts the trials of one row in log order and works out its result from its trials and the rule in force. */
 export function judgeRow(state: CaseState, asked: ResponseClass, key: string): void {
 	const row = state.rows[asked].get(key);
 	if (!row) return;
+	const trials = row.trials.map((id) => state.trials.get(id)).filter((trial) => trial !== undefined);
+	if (!inOrder(trials)) row.trials = trials.sort((a, b) => a.order - b.order).map((trial) => trial.id);
 	const effects: Effect[] = [];
 	const kinds: Row['kinds'] = {};
 	let milliamps: Row['milliamps'] = null;
-	for (const id of row.trials) {
-		const trial = state.trials.get(id);
-		if (!trial) continue;
+	for (const trial of trials) {
 		const effect = trial.effect[asked];
 		if (effect === 'pending') continue;
 		effects.push(effect);
@@ -79,6 +68,10 @@ export function judgeRow(state: CaseState, asked: ResponseClass, key: string): v
 		count(kinds, trial);
 	}
 	Object.assign(row, verdict(effects, state.protocol.rule), { kinds, milliamps });
+}
+
+function inOrder(trials: readonly Trial[]): boolean {
+	return trials.every((trial, index) => index === 0 || (trials[index - 1] as Trial).order < trial.order);
 }
 
 function count(kinds: Row['kinds'], { score }: Trial): void {

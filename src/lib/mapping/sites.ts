@@ -46,7 +46,7 @@ export function tagResults(state: CaseState): TagResult[] {
 	const rows = new Map<string, CombinedRow[]>();
 	for (const { tag, placed } of state.tags.values()) if (placed) rows.set(tag, []);
 	for (const asked of CLASSES) {
-		for (const row of state.rows[asked].values()) {
+		for (const row of sites(state, asked)) {
 			const list = rows.get(row.tag) ?? [];
 			rows.set(row.tag, list);
 			list.push({ task: row.task, language: row.language, verdict: row.verdict, class: asked });

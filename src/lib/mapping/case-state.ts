@@ -130,6 +130,11 @@ export interface Pause {
 	to: number;
 }
 
+/** `time` in milliseconds since the epoch */
+export function isDuring(pause: Pause, time: number): boolean {
+	return pause.from <= time && time < pause.to;
+}
+
 export function emptyCase(): CaseState {
 	return {
 		position: 0,

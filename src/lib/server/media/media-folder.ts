@@ -2,8 +2,18 @@ import { createHash, randomUUID } from 'node:crypto';
 import { mkdir, readFile, readdir, rename, writeFile } from 'node:fs/promises';
 import { join } from 'node:path';
 
-/** What one picture or sound was built into. */
-export type Built = { files: { file: string; width: number }[] } | { file: string; duration: number };
+/** The files of one picture, smallest first, with their widths in pixels. */
+export interface BuiltPicture {
+	files: { file: string; width: number }[];
+}
+
+/** The file of one sound and its duration in seconds. */
+export interface BuiltSound {
+	file: string;
+	duration: number;
+}
+
+type Built = BuiltPicture | BuiltSound;
 
 const INDEX = 'index.json';
 

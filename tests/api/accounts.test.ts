@@ -25,7 +25,7 @@ beforeAll(async () => {
 	members = await team(server);
 	administrator = members.administrator.client;
 });
-afterAll(() => server.stop());
+afterAll(() => server.discard());
 
 const signIn = (email: string, password: string) => new Client(server.url).post('/api/sign-in', { email, password });
 const whoAmI = (client: Client) => client.get('/api/settings');
@@ -338,7 +338,7 @@ describe('the link of the first administrator', () => {
 			await second.stop();
 		}
 		const third = await startServer({ dataDir: first.dataDir });
-		await third.stop();
+		await third.discard();
 		expect(third.setUp).toBeNull();
 	});
 });

@@ -17,10 +17,12 @@ export interface Server {
 	setUp: string | null;
 	/** everything it printed, by line */
 	printed: string[];
-	/** Ends it as the operating system would; the data stay until the process of the test ends. */
+	/** Ends it as the operating system would; its data stay, for a start after it. */
 	stop(): Promise<void>;
 	/** Ends it without warning, as a power cut would. */
 	kill(): Promise<void>;
+	/** Ends it for good, its data with it. */
+	discard(): Promise<void>;
 }
 
 export interface ServerOptions {
@@ -33,7 +35,7 @@ export interface ServerOptions {
 
 /** Starts the server and waits until it listens. */
 export async function startServer(options: ServerOptions = {}): Promise<Server> {
-	const dataDir = options.dataDir ?? newDataDir();
+	const dataDir = options.dataDir ?? mkdtempSync(join(tmpdir(), 'wordkeep-test-'));
 	const port = options.port ?? (await freePort());
 	const child = spawn(process.execPath, ['src/cli/start.js'], {
 		env: { ...process.env, NODE_ENV: 'production', ...options.env, DATA_DIR: dataDir, PORT: String(port) },
@@ -49,19 +51,18 @@ export async function startServer(options: ServerOptions = {}): Promise<Server> 
 	});
 	const setUp = /\/set-up\/\S+/.exec(printed.join('\n'))?.[0] ?? null;
 	const url = `http://localhost:${port}`;
-	return { url, port, dataDir, setUp, printed, stop: () => end(child, 'SIGTERM'), kill: () => end(child, 'SIGKILL') };
+	const stop = () => end(child, 'SIGTERM');
+	const discard = async () => {
+		await stop();
+		rmSync(dataDir, { recursive: true, force: true });
+	};
+	return { url, port, dataDir, setUp, printed, stop, kill: () => end(child, 'SIGKILL'), discard };
 }
 
 async function end(child: ChildProcess, signal: NodeJS.Signals): Promise<void> {
 	if (child.exitCode !== null || child.signalCode !== null) return;
 	child.kill(signal);
 	await once(child, 'exit');
-}
-
-function newDataDir(): string {
-	const folder = mkdtempSync(join(tmpdir(), 'wordkeep-test-'));
-	process.once('exit', () => rmSync(folder, { recursive: true, force: true }));
-	return folder;
 }
 
 async function freePort(): Promise<number> {

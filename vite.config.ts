@@ -5,12 +5,18 @@ import { defineConfig } from 'vitest/config';
 export default defineConfig({
 	plugins: [tailwindcss(), sveltekit()],
 	test: {
-		include: ['tests/{unit,reference,api}/**/*.test.ts'],
 		environment: 'node',
 		env: { DATA_DIR: ':memory:' },
 		pool: 'forks',
 		expect: { requireAssertions: true },
 		testTimeout: 30_000,
-		hookTimeout: 60_000
+		hookTimeout: 60_000,
+		projects: [
+			{ extends: true, test: { name: 'rules', include: ['tests/{unit,reference}/**/*.test.ts'] } },
+			{
+				extends: true,
+				test: { name: 'api', include: ['tests/api/**/*.test.ts'], globalSetup: ['tests/api/build.ts'] }
+			}
+		]
 	}
 });

@@ -17,8 +17,9 @@ export async function readAppend(
 	if (Number(request.headers.get('content-length') ?? 0) > MOST_BYTES) return refused(tooMuch());
 	const bytes = await request.arrayBuffer();
 	if (bytes.byteLength > MOST_BYTES) return refused(tooMuch());
-	const events = eventsIn(bytes);
-	if (events === null) return refused(refusal(400, 'The request is not JSON. Nothing was stored.'));
+	const body = bodyIn(bytes);
+	if (body === undefined) return refused(refusal(400, 'The request is not JSON. Nothing was stored.'));
+	const events = (body as { events?: unknown } | null)?.events;
 	if (!Array.isArray(events)) return refused(refusal(422, 'events: a list of entries. Nothing was stored.'));
 	if (events.length > MOST_EVENTS) return refused(tooMuch());
 	for (const [index, event] of events.entries()) {
@@ -36,13 +37,12 @@ function tooMuch(): Response {
 	return refusal(413, `At most ${MOST_EVENTS} entries and ${MOST_BYTES / 1024} KiB at once: send it in parts.`);
 }
 
-/** The list of events; undefined when the JSON holds none, null when it is no JSON. */
-function eventsIn(bytes: ArrayBuffer): unknown {
+/** The JSON value, or undefined when it is none. */
+function bodyIn(bytes: ArrayBuffer): unknown {
 	try {
-		const body = JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes)) as { events?: unknown } | null;
-		return body?.events;
+		return JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes));
 	} catch {
-		return null;
+		return undefined;
 	}
 }
 

@@ -1,7 +1,7 @@
 import type { Database, Statement } from 'better-sqlite3';
 import type { AnyCaseEvent, LogEvent, Receipt } from '$lib/mapping/events';
+import { hub, staffRoom } from '$lib/server/live/hub';
 import { withConnection } from '../database';
-import { hub, staffRoom } from '../live/hub';
 import type { CaseLogRow } from '../tables';
 import { canonicalJson, chainHash, FIRST_PREVIOUS } from './chain';
 

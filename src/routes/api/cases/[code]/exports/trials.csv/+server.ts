@@ -2,11 +2,11 @@ import { fold } from '$lib/mapping/fold';
 import { csvDownload } from '$lib/server/exports/download';
 import { trialsCsv } from '$lib/server/exports/trials-csv';
 import { logOf } from '$lib/server/log/log';
-import { clinicZone } from '$lib/server/settings';
+import { readSettings } from '$lib/server/settings';
 import type { RequestHandler } from './$types';
 
 export const GET: RequestHandler = async ({ locals }) => {
 	const { code } = locals.case;
-	const state = fold(await logOf(code));
-	return csvDownload(code, 'trials', trialsCsv(code, state, await clinicZone()));
+	const { zone } = await readSettings();
+	return csvDownload(code, 'trials', trialsCsv(code, fold(await logOf(code)), zone));
 };

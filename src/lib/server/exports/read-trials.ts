@@ -57,7 +57,10 @@ const cells = {
 	required: json.pipe(protocolFields.required)
 } satisfies Partial<Record<TrialColumn, z.ZodType>>;
 
-const row = z.object(cells);
+const row = z.object(cells).refine(({ rule_share_part: part, rule_share_whole: whole }) => part <= whole, {
+	path: ['rule_share_part'],
+	message: 'is more than rule_share_whole'
+});
 
 /** One trial of the file; `line` is its row as a spreadsheet counts, the header being row 1. */
 export type TrialRow = z.infer<typeof row> & { line: number };

@@ -22,11 +22,10 @@ export interface Stored {
 }
 
 /** The hash of an entry by the formula of the contract, from what GET events answers. */
-export function hashOf(
-	previous: string,
-	code: string,
-	{ position, receivedAt, sender, hash: _hash, ...event }: Stored
-) {
+export function hashOf(previous: string, code: string, entry: Stored): string {
+	const { position, receivedAt, sender } = entry;
+	const added = ['position', 'receivedAt', 'sender', 'hash'];
+	const event = Object.fromEntries(Object.entries(entry).filter(([name]) => !added.includes(name)));
 	const link = canonical({ case: code, position, receivedAt, sender, event });
 	return createHash('sha256')
 		.update(previous + link, 'utf8')

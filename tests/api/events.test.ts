@@ -1,49 +1,46 @@
 import { v7 } from 'uuid';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { canonical, hashOf, type Stored } from './canonical';
-import { LogServer, made, trials, type Client } from './log-server';
+import type { Answer } from './client';
+import { cookieOf, made, newCase, trials } from './entries';
+import { startServer, team, type Member, type RoleName, type Server } from './server';
 
-interface Refused {
-	error: string;
-	index?: number;
-	id?: string;
-}
-
-interface Accepted {
-	stored: { id: string; position: number }[];
-}
-
-let server: LogServer;
-let examiner: Client;
+let server: Server;
+let members: Record<RoleName, Member>;
+let examiner: Member;
 let code: string;
 
 beforeAll(async () => {
-	server = await LogServer.start();
-	examiner = await server.join('examiner');
+	server = await startServer();
+	members = await team(server);
+	examiner = members.examiner;
 });
-afterAll(() => server.stop());
+afterAll(() => server.discard());
 
-async function newCase(): Promise<void> {
-	code = await examiner.newCase();
+async function anotherCase(): Promise<void> {
+	code = await newCase(examiner);
 }
 
 const events = () => `/api/cases/${code}/events`;
 
-async function send(given: unknown[], by = examiner) {
-	return await by.post<Accepted & Refused>(events(), { events: given });
+function send(given: unknown[], by = examiner): Promise<Answer> {
+	return by.client.post(events(), { events: given });
+}
+
+/** Sends text or bytes as they are. */
+function sendRaw(body: BodyInit): Promise<Answer> {
+	return examiner.client.request('POST', events(), { body, headers: { 'content-type': 'application/json' } });
 }
 
 async function log(after?: number): Promise<Stored[]> {
-	const { body } = await examiner.get<{ events: Stored[] }>(
-		after === undefined ? events() : `${events()}?after=${after}`
-	);
-	return body.events;
+	const path = after === undefined ? events() : `${events()}?after=${after}`;
+	return (await examiner.client.get(path)).body.events;
 }
 
 const placed = (tag: string, other: object = {}) => ({ ...made('tag-placed', { tag }), ...other });
 
 describe('appending to a case log', () => {
-	beforeAll(newCase);
+	beforeAll(anotherCase);
 
 	it('gives positions 1, 2, 3 without gaps, in the order sent', async () => {
 		const [first, second, third] = [placed('1'), placed('2'), placed('3')];
@@ -60,8 +57,8 @@ describe('appending to a case log', () => {
 	});
 
 	it('counts each case for itself', async () => {
-		const other = await examiner.newCase();
-		const { body } = await examiner.post<Accepted>(`/api/cases/${other}/events`, { events: [placed('1')] });
+		const other = await newCase(examiner);
+		const { body } = await examiner.client.post(`/api/cases/${other}/events`, { events: [placed('1')] });
 		expect(body.stored[0]?.position).toBe(1);
 	});
 
@@ -73,7 +70,7 @@ describe('appending to a case log', () => {
 });
 
 describe('an entry sent again', () => {
-	beforeAll(newCase);
+	beforeAll(anotherCase);
 	const event = { ...made('trial-scored', { trial: v7(), score: 'anomia', corrects: [], said: 'hut' }), by: undefined };
 
 	it('keeps its position and is stored once, whatever the order of its fields', async () => {
@@ -82,15 +79,16 @@ describe('an entry sent again', () => {
 		const { data, ...rest } = event;
 		const turned = { data: Object.fromEntries(Object.entries(data).reverse()), ...rest };
 		expect(JSON.stringify(turned)).not.toBe(JSON.stringify(event));
-		expect((await send([event, placed('2'), turned])).body.stored.map(({ position }) => position)).toEqual([1, 3, 1]);
+		expect((await send([event, placed('2'), turned])).body.stored.map(({ position }: Stored) => position)).toEqual([
+			1, 3, 1
+		]);
 		expect((await log()).map(({ position }) => position)).toEqual([1, 2, 3]);
 	});
 
 	it('is the same when its numbers are written in another way', async () => {
 		const body = JSON.stringify({ events: [event] }).replace('"monotonic":12.5', '"monotonic":1.250e1');
 		expect(body).toContain('1.250e1');
-		const response = await examiner.request(events(), { body });
-		expect(await response.json()).toEqual({ stored: [{ id: event.id, position: 1 }] });
+		expect((await sendRaw(body)).body).toEqual({ stored: [{ id: event.id, position: 1 }] });
 	});
 
 	it('with other content is refused with 409, and nothing of its batch is stored', async () => {
@@ -114,8 +112,8 @@ describe('an entry sent again', () => {
 	});
 
 	it('stands in another case with content of its own', async () => {
-		const other = await examiner.newCase();
-		const { status } = await examiner.post(`/api/cases/${other}/events`, {
+		const other = await newCase(examiner);
+		const { status } = await examiner.client.post(`/api/cases/${other}/events`, {
 			events: [{ ...event, data: { ...event.data, score: 'intact' } }]
 		});
 		expect(status).toBe(200);
@@ -123,7 +121,7 @@ describe('an entry sent again', () => {
 });
 
 describe('a batch with one bad entry', () => {
-	beforeAll(newCase);
+	beforeAll(anotherCase);
 
 	it('is refused whole with 422, its index and its id, before any 409', async () => {
 		const first = placed('1');
@@ -195,15 +193,15 @@ describe('a batch with one bad entry', () => {
 			],
 			['event', JSON.stringify(event).replace('{', '{"__proto__":{"x":1},')]
 		] as const) {
-			const response = await examiner.request(events(), { body: `{"events":[${text}]}` });
-			expect([field, response.status]).toEqual([field, 422]);
-			expect(((await response.json()) as Refused).error).toContain('__proto__');
+			const refused = await sendRaw(`{"events":[${text}]}`);
+			expect([field, refused.status]).toEqual([field, 422]);
+			expect(refused.body.error).toContain('__proto__');
 		}
 	});
 });
 
 describe('a request that holds no list of entries', () => {
-	beforeAll(newCase);
+	beforeAll(anotherCase);
 
 	it.each([
 		['text', 'no JSON', 400],
@@ -213,15 +211,15 @@ describe('a request that holds no list of entries', () => {
 		['entries that are null', '{"events":null}', 422],
 		['entries that are an object', '{"events":{}}', 422]
 	])('%s is refused and nothing stored', async (_, body, status) => {
-		const response = await examiner.request(events(), { body });
-		expect(response.status).toBe(status);
-		expect(((await response.json()) as Refused).error).toEqual(expect.any(String));
+		const refused = await sendRaw(body);
+		expect(refused.status).toBe(status);
+		expect(refused.body.error).toEqual(expect.any(String));
 		expect(await log()).toEqual([]);
 	});
 });
 
 describe('the size of a request', () => {
-	beforeAll(newCase);
+	beforeAll(anotherCase);
 	const KIB_256 = 256 * 1024;
 
 	function sized(bytes: number): string {
@@ -239,16 +237,20 @@ describe('the size of a request', () => {
 	it('may be 256 KiB, and no more, whether it says its length or not', async () => {
 		const before = await log();
 		for (const size of [KIB_256 + 1, 3 * KIB_256, 40 * KIB_256]) {
-			const whole = await examiner.request(events(), { body: sized(size) });
+			const whole = await sendRaw(sized(size));
 			expect([size, whole.status]).toEqual([size, 413]);
-			expect(((await whole.json()) as Refused).error).toContain('in parts');
-			const parts = { body: new Blob([sized(size)]).stream(), duplex: 'half' } as RequestInit;
-			const chunked = await examiner.request(events(), { ...parts, headers: { 'content-type': 'application/json' } });
+			expect(whole.body.error).toContain('in parts');
+			const chunked = await fetch(server.url + events(), {
+				method: 'POST',
+				headers: { ...cookieOf(examiner.client), 'content-type': 'application/json' },
+				body: new Blob([sized(size)]).stream(),
+				duplex: 'half'
+			} as RequestInit);
 			expect([size, chunked.status]).toEqual([size, 413]);
-			expect(((await chunked.json()) as Refused).error).toContain('in parts');
+			expect(await chunked.json()).toEqual({ error: whole.body.error });
 		}
 		expect(await log()).toEqual(before);
-		expect((await examiner.request(events(), { body: sized(KIB_256) })).status).toBe(200);
+		expect((await sendRaw(sized(KIB_256))).status).toBe(200);
 	});
 
 	it('is judged before what is in it', async () => {
@@ -257,7 +259,7 @@ describe('the size of a request', () => {
 });
 
 describe('the case log as it is read', () => {
-	beforeAll(newCase);
+	beforeAll(anotherCase);
 
 	it('has every entry as it came, with position, receivedAt, sender and hash', async () => {
 		const sent = {
@@ -266,7 +268,7 @@ describe('the case log as it is read', () => {
 			clock: '2031-03-05T06:15:00Z',
 			uncertainty: 0.1 + 0.2,
 			boot: v7(),
-			by: examiner.account,
+			by: examiner.id,
 			v: 1
 		};
 		const before = Date.now();
@@ -274,7 +276,7 @@ describe('the case log as it is read', () => {
 		const [{ position, receivedAt, sender, hash, ...event }] = (await log()) as [Stored];
 		expect(event).toEqual(sent);
 		expect(JSON.stringify(event)).toBe(JSON.stringify(sent));
-		expect({ position, sender }).toEqual({ position: 1, sender: examiner.account });
+		expect({ position, sender }).toEqual({ position: 1, sender: examiner.id });
 		expect(Date.parse(receivedAt)).toBeGreaterThanOrEqual(before - 1000);
 		expect(Date.parse(receivedAt)).toBeLessThanOrEqual(Date.now() + 1000);
 		expect(hash).toMatch(/^[0-9a-f]{64}$/);
@@ -300,31 +302,31 @@ describe('the case log as it is read', () => {
 	});
 
 	it.each(['-1', '1.5', 'one', '0x10', '1e3', ' 1', '99999999999999999999'])('has no position %s', async (after) => {
-		expect((await examiner.get(`${events()}?after=${encodeURIComponent(after)}`)).status).toBe(422);
+		expect((await examiner.client.get(`${events()}?after=${encodeURIComponent(after)}`)).status).toBe(422);
 	});
 });
 
 describe('several people on a case', () => {
 	it('act for one another by name when they are on its team, and the log keeps who sent it', async () => {
-		const [therapist, stranger] = [await server.join('therapist'), await server.join('examiner')];
-		code = await examiner.newCase(therapist);
-		expect((await send([placed('1', { by: therapist.account })])).status).toBe(200);
-		expect(await send([placed('2', { by: stranger.account })])).toMatchObject({ status: 422, body: { index: 0 } });
-		expect((await log()).map(({ by, sender }) => [by, sender])).toEqual([[therapist.account, examiner.account]]);
+		const { therapist, neurophysiologist: stranger } = members;
+		code = await newCase(examiner, therapist);
+		expect((await send([placed('1', { by: therapist.id })])).status).toBe(200);
+		expect(await send([placed('2', { by: stranger.id })])).toMatchObject({ status: 422, body: { index: 0 } });
+		expect((await log()).map(({ by, sender }) => [by, sender])).toEqual([[therapist.id, examiner.id]]);
 	});
 
 	it('the same entry from two of them is one', async () => {
-		const therapist = await server.join('therapist');
-		code = await examiner.newCase(therapist);
+		const { therapist } = members;
+		code = await newCase(examiner, therapist);
 		const event = placed('1');
 		await send([event]);
 		expect((await send([event], therapist)).body.stored).toEqual([{ id: event.id, position: 1 }]);
-		expect((await log()).map(({ sender }) => sender)).toEqual([examiner.account]);
+		expect((await log()).map(({ sender }) => sender)).toEqual([examiner.id]);
 	});
 
 	it('post at once and leave no gap; each batch stays together, every answer is true', async () => {
-		const other = await server.join('neurophysiologist');
-		code = await examiner.newCase(other);
+		const other = members.neurophysiologist;
+		code = await newCase(examiner, other);
 		const batches = Array.from({ length: 40 }, (_, index) => ({
 			by: index % 2 === 0 ? examiner : other,
 			given: Array.from({ length: 1 + (index % 5) }, () => placed('1'))
@@ -335,8 +337,8 @@ describe('several people on a case', () => {
 		expect(entries).toHaveLength(batches.reduce((sum, { given }) => sum + given.length, 0));
 		const positions = new Map(entries.map(({ id, position }) => [id, position]));
 		answers.forEach(({ body: { stored } }, index) => {
-			expect(stored.map(({ id }) => id)).toEqual(batches[index]?.given.map(({ id }) => id));
-			stored.forEach(({ id, position }, place) => {
+			expect(stored.map(({ id }: Stored) => id)).toEqual(batches[index]?.given.map(({ id }) => id));
+			stored.forEach(({ id, position }: Stored, place: number) => {
 				expect(position).toBe(positions.get(id));
 				expect(position).toBe((stored[0]?.position ?? 0) + place);
 			});
@@ -346,8 +348,8 @@ describe('several people on a case', () => {
 	});
 
 	it('the same entries sent by two at once are stored once', async () => {
-		const other = await server.join('neurophysiologist');
-		code = await examiner.newCase(other);
+		const other = members.neurophysiologist;
+		code = await newCase(examiner, other);
 		const given = Array.from({ length: 20 }, () => placed('1'));
 		const answers = await Promise.all(Array.from({ length: 10 }, (_, n) => send(given, n % 2 ? other : examiner)));
 		expect(new Set(answers.map(({ body }) => canonical(body))).size).toBe(1);
@@ -357,14 +359,14 @@ describe('several people on a case', () => {
 
 describe('a server that is killed', () => {
 	it('has every entry it acknowledged when it starts again, and goes on with the next position', async () => {
-		await newCase();
+		await anotherCase();
 		const acknowledged: string[] = [];
 		let running = true;
 		const sending = (async () => {
 			while (running) {
 				try {
 					const { body } = await send([placed('1')]);
-					acknowledged.push(...body.stored.map(({ id }) => id));
+					acknowledged.push(...body.stored.map(({ id }: Stored) => id));
 				} catch {
 					return;
 				}
@@ -374,7 +376,7 @@ describe('a server that is killed', () => {
 		await server.kill();
 		running = false;
 		await sending;
-		await server.restart();
+		server = await startServer(server);
 		const entries = await log();
 		expect(entries.map(({ id }) => id)).toEqual(expect.arrayContaining(acknowledged));
 		expect((await send([placed('2')])).body.stored[0]?.position).toBe(entries.length + 1);

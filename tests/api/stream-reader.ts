@@ -1,5 +1,6 @@
 import type { Stored } from './canonical';
-import type { Client } from './log-server';
+import type { Client } from './client';
+import { cookieOf } from './entries';
 
 /** One message of a server-sent event stream, by the fields of the WHATWG HTML standard. */
 export interface Message {
@@ -24,7 +25,8 @@ export class StreamReader {
 
 	static async open(client: Client, path: string, headers: Record<string, string> = {}): Promise<StreamReader> {
 		const abort = new AbortController();
-		const response = await client.request(path, { headers, signal: abort.signal });
+		const init = { headers: { ...cookieOf(client), ...headers }, signal: abort.signal };
+		const response = await fetch(client.url + path, init);
 		const reader = new StreamReader(response);
 		reader.#abort.signal.addEventListener('abort', () => abort.abort());
 		return reader;

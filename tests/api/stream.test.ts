@@ -1,40 +1,41 @@
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Stored } from './canonical';
-import { LogServer, made, type Client } from './log-server';
+import { made, newCase } from './entries';
+import { startServer, team, type Member, type Server } from './server';
 import { StreamReader } from './stream-reader';
 
-let server: LogServer;
-let examiner: Client;
-let surgeon: Client;
+let server: Server;
+let examiner: Member;
+let surgeon: Member;
 let code: string;
 const readers: StreamReader[] = [];
 
 beforeAll(async () => {
-	server = await LogServer.start();
-	[examiner, surgeon] = [await server.join('examiner'), await server.join('surgeon')];
+	server = await startServer();
+	({ examiner, surgeon } = await team(server));
 });
 beforeEach(async () => {
-	code = await examiner.newCase(surgeon);
+	code = await newCase(examiner, surgeon);
 });
 afterAll(async () => {
 	await Promise.all(readers.map((reader) => reader.close()));
-	await server.stop();
+	await server.discard();
 });
 
 async function open(query = '', headers: Record<string, string> = {}): Promise<StreamReader> {
-	const reader = await StreamReader.open(surgeon, `/api/cases/${code}/stream${query}`, headers);
+	const reader = await StreamReader.open(surgeon.client, `/api/cases/${code}/stream${query}`, headers);
 	readers.push(reader);
 	return reader;
 }
 
 async function send(count: number): Promise<void> {
 	const events = Array.from({ length: count }, () => made('tag-placed', { tag: '1' }));
-	const { status } = await examiner.post(`/api/cases/${code}/events`, { events });
+	const { status } = await examiner.client.post(`/api/cases/${code}/events`, { events });
 	if (status !== 200) throw new Error(`answered with ${status}`);
 }
 
 async function log(): Promise<Stored[]> {
-	return (await examiner.get<{ events: Stored[] }>(`/api/cases/${code}/events`)).body.events;
+	return (await examiner.client.get(`/api/cases/${code}/events`)).body.events;
 }
 
 const positions = (reader: StreamReader) => reader.entries.map(({ position }) => position);
@@ -95,8 +96,8 @@ describe('the stream of a case log', () => {
 
 	it('gives no entry of another case', async () => {
 		const reader = await open();
-		const other = await examiner.newCase();
-		await examiner.post(`/api/cases/${other}/events`, { events: [made('tag-placed', { tag: '2' })] });
+		const other = await newCase(examiner);
+		await examiner.client.post(`/api/cases/${other}/events`, { events: [made('tag-placed', { tag: '2' })] });
 		await send(1);
 		await reader.until(({ entries }) => entries.length > 0);
 		expect(reader.entries.map(({ data }) => data)).toEqual([{ tag: '1' }]);
@@ -142,7 +143,8 @@ describe('the stream of a case log', () => {
 		const before = await open();
 		await send(4);
 		await before.until(({ entries }) => entries.length === 4);
-		await server.restart();
+		await server.kill();
+		server = await startServer(server);
 		await send(2);
 		const after = await open('', { 'last-event-id': before.messages.findLast(({ id }) => id !== undefined)?.id ?? '' });
 		await after.until(({ entries }) => entries.length === 2);

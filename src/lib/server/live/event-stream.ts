@@ -6,19 +6,19 @@ export interface StreamMessage {
 	data: unknown;
 }
 
-/** Messages a slow reader may be behind before its connection is dropped; it comes back and asks for what it missed. */
+/** Sends one message, or several as one: a reader who begins is not behind, however long what it asked for is. */
+export type Send = (messages: StreamMessage | readonly StreamMessage[]) => void;
+
+/** Sends a slow reader may be behind before its connection is dropped; it comes back and asks for what it missed. */
 const MOST_BEHIND = 2000;
 
 /**
  * A response that stays open and carries messages (WHATWG HTML, server-sent events), with a heartbeat each second.
  *
- * @param open called once with the function that sends; what it returns is called when the reader is gone
+ * @param open called once with what sends and what ends the stream; what it returns is called when the reader is gone
  * @param heartbeat the data of a heartbeat
  */
-export function eventStream(
-	open: (send: (message: StreamMessage) => void) => () => void,
-	heartbeat: () => unknown
-): Response {
+export function eventStream(open: (send: Send) => () => void, heartbeat: () => unknown): Response {
 	const encoder = new TextEncoder();
 	let close = () => {};
 	const body = new ReadableStream<Uint8Array>(
@@ -38,11 +38,11 @@ export function eventStream(
 					if ((controller.desiredSize ?? 0) < -MOST_BEHIND) return stop(true);
 					controller.enqueue(encoder.encode(text));
 				};
-				const send = (message: StreamMessage) => write(format(message));
+				const send: Send = (messages) => write([messages].flat().map(format).join(''));
 				const beat = setInterval(() => send({ name: 'heartbeat', data: heartbeat() }), 1000);
 				close = () => stop(false);
 				write('retry: 500\n\n');
-				leave = open(send);
+				leave = open(send, () => stop(true));
 				send({ name: 'heartbeat', data: heartbeat() });
 			},
 			cancel() {

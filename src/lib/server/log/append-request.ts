@@ -14,11 +14,11 @@ export async function readAppend(
 	request: Request,
 	also: (event: AnyCaseEvent) => string | null
 ): Promise<Body<AnyCaseEvent[]>> {
-	if (Number(request.headers.get('content-length') ?? 0) > MOST_BYTES) return refused(tooMuch());
-	const bytes = await request.arrayBuffer();
-	if (bytes.byteLength > MOST_BYTES) return refused(tooMuch());
-	const events = eventsIn(bytes);
-	if (events === null) return refused(refusal(400, 'The request is not JSON. Nothing was stored.'));
+	const bytes = await bytesOf(request);
+	if (bytes === null) return refused(tooMuch());
+	const body = bodyIn(bytes);
+	if (body === undefined) return refused(refusal(400, 'The request is not JSON. Nothing was stored.'));
+	const events = (body as { events?: unknown } | null)?.events;
 	if (!Array.isArray(events)) return refused(refusal(422, 'events: a list of entries. Nothing was stored.'));
 	if (events.length > MOST_EVENTS) return refused(tooMuch());
 	for (const [index, event] of events.entries()) {
@@ -36,13 +36,26 @@ function tooMuch(): Response {
 	return refusal(413, `At most ${MOST_EVENTS} entries and ${MOST_BYTES / 1024} KiB at once: send it in parts.`);
 }
 
-/** The list of events; undefined when the JSON holds none, null when it is no JSON. */
-function eventsIn(bytes: ArrayBuffer): unknown {
+/**
+ * The body, or null when it is too long. It is read to its end even then: a body that is left unread blocks the
+ * connection for the sender's next request. Beyond its own limit the adapter throws, and reads on by itself.
+ */
+async function bytesOf(request: Request): Promise<ArrayBuffer | null> {
 	try {
-		const body = JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes)) as { events?: unknown } | null;
-		return body?.events;
+		const bytes = await request.arrayBuffer();
+		return bytes.byteLength > MOST_BYTES ? null : bytes;
+	} catch (failure) {
+		if ((failure as { status?: number }).status === 413) return null;
+		throw failure;
+	}
+}
+
+/** The JSON value, or undefined when it is none. */
+function bodyIn(bytes: ArrayBuffer): unknown {
+	try {
+		return JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes));
 	} catch {
-		return null;
+		return undefined;
 	}
 }
 

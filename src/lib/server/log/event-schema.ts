@@ -1,6 +1,7 @@
 import { z } from 'zod';
-import { EFFECTS, ERROR_KINDS, PURPOSES, SCORES, TAG_KINDS, TAG_PATTERN } from '$lib/mapping/vocabulary';
-import type { EventData, EventType } from '$lib/mapping/events';
+import { EFFECTS, ERROR_KINDS, PURPOSES, SCORES, TAG_KINDS, TAG_PATTERN } from '../../mapping/vocabulary';
+import type { EventData, EventType } from '../../mapping/events';
+import { malformedIn } from './well-formed';
 
 /** What the log accepts: every released type and version, each with all of its fields. Unknown ones are refused. */
 
@@ -52,25 +53,24 @@ const stimulatedHasTag = {
 	message: 'a stimulated trial has a tag'
 };
 
+/** What a protocol says, field by field; an entry gives those it changes. */
+export const protocolFields = {
+	rule,
+	effects: z.partialRecord(score, z.strictObject({ language: effect.optional(), 'speech-motor': effect.optional() })),
+	later: z.enum(['excluded', 'counted']),
+	required: z.array(taskLanguage).max(50),
+	kinds: z.array(z.enum(ERROR_KINDS)),
+	timing: z.strictObject({
+		shown: z.number().positive().max(600_000).nullable(),
+		pause: z.number().min(0).max(600_000),
+		lead: z.number().min(0).max(2000)
+	})
+};
+
 const schemas = {
 	'tag-placed': z.strictObject({ tag, kind: z.enum(TAG_KINDS).optional() }),
 	'tag-removed': z.strictObject({ tag }),
-	'protocol-set': z.strictObject({
-		rule: rule.optional(),
-		effects: z
-			.partialRecord(score, z.strictObject({ language: effect.optional(), 'speech-motor': effect.optional() }))
-			.optional(),
-		later: z.enum(['excluded', 'counted']).optional(),
-		required: z.array(taskLanguage).max(50).optional(),
-		kinds: z.array(z.enum(ERROR_KINDS)).optional(),
-		timing: z
-			.strictObject({
-				shown: z.number().positive().max(600_000).nullable(),
-				pause: z.number().min(0).max(600_000),
-				lead: z.number().min(0).max(2000)
-			})
-			.optional()
-	}),
+	'protocol-set': z.strictObject(protocolFields).partial(),
 	'stimulation-settings': z.strictObject({
 		technique: name,
 		frequency: z.number().positive().max(1000),
@@ -182,7 +182,7 @@ export function faultOf(event: unknown): string | null {
 	const schema = events.get(type.data.type);
 	if (!schema) return `unknown type: ${type.data.type}`;
 	const parsed = schema.safeParse(event);
-	if (parsed.success) return null;
+	if (parsed.success) return malformedIn(event);
 	return parsed.error.issues
 		.map(({ path, message }) => (path.length ? `${path.join('.')}: ${message}` : message))
 		.join('; ');

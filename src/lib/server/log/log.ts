@@ -1,14 +1,21 @@
 import type { Database, Statement } from 'better-sqlite3';
 import type { AnyCaseEvent, LogEvent, Receipt } from '$lib/mapping/events';
+import { hub, staffRoom } from '$lib/server/live/hub';
 import { withConnection } from '../database';
 import type { CaseLogRow } from '../tables';
 import { canonicalJson, chainHash, FIRST_PREVIOUS } from './chain';
 
 export type StoredEvent = AnyCaseEvent & Receipt;
 
-export interface Appended {
+/** Where an event stands in the log of its case. */
+export interface Place {
+	id: string;
+	position: number;
+}
+
+interface Appended {
 	/** where every event given stands, in the order given */
-	stored: { id: string; position: number }[];
+	stored: Place[];
 	/** those that were not in the log before */
 	added: StoredEvent[];
 }
@@ -24,17 +31,21 @@ export class IdTaken extends Error {
 }
 
 /**
- * Appends events to the log of a case, all or none, and returns after SQLite has synced them to disk. An event that
- * is in the log already keeps its position and is not stored again.
+ * Appends events to the log of a case, all or none, and returns after SQLite has synced them to disk and everybody who
+ * watches the case was told. An event that is in the log already keeps its position and is not stored again.
  *
  * @param events checked against the schema
  * @param sender account id, or the id of a patient view
  * @throws IdTaken, with nothing stored
  */
-export async function append(code: string, sender: string, events: AnyCaseEvent[]): Promise<Appended> {
-	return await withConnection((connection) =>
-		connection.transaction(() => appendRows(statementsOf(connection), code, sender, events)).immediate()
-	);
+export async function append(code: string, sender: string, events: AnyCaseEvent[]): Promise<Place[]> {
+	return await withConnection((connection) => {
+		const work = connection.transaction(() => appendRows(statementsOf(connection), code, sender, events));
+		const { stored, added } = work.immediate();
+		// While the connection is held, so that nobody hears of a later entry before an earlier one.
+		if (added.length > 0) hub.entries(staffRoom(code), added);
+		return stored;
+	});
 }
 
 function appendRows(statements: Statements, code: string, sender: string, events: AnyCaseEvent[]): Appended {

@@ -10,5 +10,6 @@ export const GET: RequestHandler = async ({ locals, url }) => {
 	const asked = (url.searchParams.get('class') ?? 'language') as ResponseClass;
 	if (!CLASSES.includes(asked)) return refusal(422, `class: one of ${CLASSES.join(', ')}`);
 	const state = fold(await logOf(locals.case.code));
-	return json({ sites: sites(state, asked).map(({ trials: _, ...row }) => row), tags: tagResults(state) });
+	// Which trials are in a row is nobody's but the program's; what is undefined is left out of JSON.
+	return json({ sites: sites(state, asked).map((row) => ({ ...row, trials: undefined })), tags: tagResults(state) });
 };

@@ -1,4 +1,4 @@
-import { eventStream, type StreamMessage } from '$lib/server/live/event-stream';
+import { eventStream, type Send } from '$lib/server/live/event-stream';
 import { hub, staffRoom } from '$lib/server/live/hub';
 import { lastHeard } from '$lib/server/live/presence';
 import { BOOT, serverNow } from '$lib/server/live/server-clock';
@@ -13,14 +13,12 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 	if (!after.ok) return after.response;
 	let reached = after.position;
 
-	const follow = (send: (message: StreamMessage) => void) => {
+	const follow = (send: Send, end: () => void) => {
 		let missed: StoredEvent[] | null = [];
 		const deliver = (events: StoredEvent[]) => {
-			for (const event of events) {
-				if (event.position <= reached) continue;
-				reached = event.position;
-				send({ id: event.position, data: event });
-			}
+			const fresh = events.filter(({ position }) => position > reached);
+			reached = fresh.at(-1)?.position ?? reached;
+			if (fresh.length > 0) send(fresh.map((event) => ({ id: event.position, data: event })));
 		};
 		// Listen first, then read: what is stored in between waits its turn.
 		const leave = hub.listen(staffRoom(code), {
@@ -35,8 +33,9 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 				missed = null;
 			},
 			(failure: unknown) => {
+				// Heartbeats without entries would look like a log in which nothing happens.
 				console.error('stream', code, failure);
-				leave();
+				end();
 			}
 		);
 		return leave;

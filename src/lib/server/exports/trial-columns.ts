@@ -1,0 +1,47 @@
+import { PROTOCOL_COLUMNS } from './protocol-columns';
+
+/** The columns of trials.csv in their order; the README says what each holds. */
+export const TRIAL_COLUMNS = [
+	'case',
+	'position',
+	'trial',
+	'at',
+	'device',
+	'by',
+	'run',
+	'purpose',
+	'tag',
+	'stimulated',
+	'milliamps',
+	'technique',
+	'frequency_hz',
+	'pulse_width_ms',
+	'probe',
+	'train_s',
+	'task',
+	'language',
+	'item',
+	'answer',
+	'score',
+	'also',
+	'when',
+	'movement_tongue',
+	'movement_hand',
+	'said',
+	'note',
+	'scored_at',
+	'scored_by',
+	'contested',
+	'contested_scores',
+	'pending',
+	'shown',
+	'onset_planned',
+	'onset_measured',
+	'onset_source',
+	'excluded',
+	'effect_language',
+	'effect_speech_motor',
+	...PROTOCOL_COLUMNS
+] as const;
+
+export type TrialColumn = (typeof TRIAL_COLUMNS)[number];

@@ -61,7 +61,7 @@ function protocolWords(data: EventData['protocol-set']): string {
 }
 
 const WORDS: Words = {
-	'tag-placed': ({ tag, kind }) => list([`Tag ${tag} placed`, kind === 'subcortical' && TAG_KIND_NAMES[kind]]),
+	'tag-placed': ({ tag, kind }) => list([`Tag ${tag} laid`, kind === 'subcortical' && TAG_KIND_NAMES[kind]]),
 	'tag-removed': ({ tag }) => `Tag ${tag} taken off`,
 	'protocol-set': protocolWords,
 	'stimulation-settings': (data) =>

@@ -2,19 +2,14 @@ import { APPENDERS, READERS } from '$lib/server/accounts/roles';
 import { isOnTeam } from '$lib/server/cases/cases';
 import { namesIn } from '$lib/server/cases/names';
 import { logOf } from '$lib/server/log/log';
-import { readSettings } from '$lib/server/settings';
 import type { PageServerLoad } from './$types';
-
-/** The page lives on this device's own entries, which a server does not have. */
-export const ssr = false;
 
 export const load: PageServerLoad = async ({ locals }) => {
 	const account = locals.account!;
 	const { code, team, createdAt } = locals.case;
 	const isAdministrator = account.roles.includes('administrator');
-	const { zone } = await readSettings();
 	const reads = isOnTeam(locals.case, account) && account.roles.some((role) => READERS.includes(role));
-	if (!reads) return { code, team, createdAt, zone, isAdministrator, content: null };
+	if (!reads) return { code, team, createdAt, isAdministrator, content: null };
 
 	const log = await logOf(code);
 	const content = {
@@ -23,5 +18,5 @@ export const load: PageServerLoad = async ({ locals }) => {
 		names: await namesIn(log, team),
 		mayAppend: account.roles.some((role) => APPENDERS.includes(role))
 	};
-	return { code, team, createdAt, zone, isAdministrator, content };
+	return { code, team, createdAt, isAdministrator, content };
 };

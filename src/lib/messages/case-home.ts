@@ -60,7 +60,8 @@ export const OVERVIEW = {
 		`${rounds} ${rounds === 1 ? 'round' : 'rounds'}. ${kept} of ${items} items are kept.`,
 	baseline: 'Baseline',
 	theatreEmpty: 'Lay the tags, open the examiner view, pair the patient view, and show the surgeon the surgeon screen.',
-	theatreDone: (trials: number, tags: number) => `${trials} trials, ${tags} ${tags === 1 ? 'tag' : 'tags'} on the cortex.`,
+	theatreDone: (trials: number, tags: number) =>
+		`${trials} trials, ${tags} ${tags === 1 ? 'tag' : 'tags'} on the cortex.`,
 	layTags: 'Lay tags',
 	resultsEmpty: 'They stand here as soon as the first trial is scored.',
 	resultsDone: (positive: number, open: number) => `${positive} positive, ${open} still open.`,
@@ -118,7 +119,8 @@ export const PROTOCOL_PART = {
 export const ITEMS_PART = {
 	inCase: 'In this case',
 	emptyTitle: 'This case has no items yet',
-	emptyText: 'Add item sets from the library below. The case keeps its own copy, so a later version of a set changes nothing here.',
+	emptyText:
+		'Add item sets from the library below. The case keeps its own copy, so a later version of a set changes nothing here.',
 	task: 'Task',
 	language: 'Language',
 	items: 'Items',

@@ -37,7 +37,8 @@ function seconds(milliseconds: number): string {
 function protocolWords(data: EventData['protocol-set']): string {
 	const { rule, effects, later, required, kinds, timing } = data;
 	const parts: string[] = [];
-	if (rule) parts.push(`at least ${rule.minTrials} trials, positive from ${rule.share[0]} of ${rule.share[1]} disturbed`);
+	if (rule)
+		parts.push(`at least ${rule.minTrials} trials, positive from ${rule.share[0]} of ${rule.share[1]} disturbed`);
 	if (kinds) parts.push(`error kinds with a key: ${kinds.map((kind) => KIND_NAMES[kind]).join(', ') || 'none'}`);
 	if (effects) {
 		const changed = Object.entries(effects).flatMap(([kind, classes]) =>
@@ -106,8 +107,7 @@ const WORDS: Words = {
 	'stimulation-ended': () => 'Stimulation ended',
 	'items-copied': ({ set, version, task, language, items }) =>
 		`Items added: ${items.length} for ${taskName(task)} in ${languageName(language)}, from ${set} ${version}`,
-	'item-decided': ({ item, keep, reason }, names) =>
-		list([`${names.item(item)}: ${keep ? 'kept' : 'dropped'}`, reason])
+	'item-decided': ({ item, keep, reason }, names) => list([`${names.item(item)}: ${keep ? 'kept' : 'dropped'}`, reason])
 };
 
 /** One entry in a sentence. */

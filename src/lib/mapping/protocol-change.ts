@@ -34,9 +34,17 @@ export function overridesOf(table: EffectTable): EffectOverrides {
  */
 export function protocolChange(before: Protocol, after: Protocol): EventData['protocol-set'] | null {
 	const changed = (Object.keys(after) as (keyof Protocol)[]).filter(
-		(field) => canonical(before[field]) !== canonical(after[field])
+		(field) => comparable(field, before[field]) !== comparable(field, after[field])
 	);
 	return changed.length === 0 ? null : Object.fromEntries(changed.map((field) => [field, after[field]]));
+}
+
+/** Lists in which the order says nothing. */
+const UNORDERED: readonly (keyof Protocol)[] = ['kinds', 'required'];
+
+function comparable(field: keyof Protocol, value: unknown): string {
+	if (!UNORDERED.includes(field)) return canonical(value);
+	return (value as unknown[]).map(canonical).sort().join();
 }
 
 /** Text that is the same for the same value, whatever the order of an object's fields. */

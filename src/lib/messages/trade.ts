@@ -1,4 +1,4 @@
-import type { Purpose, ResponseClass, Score } from '$lib/mapping/vocabulary';
+import type { Effect, Purpose, ResponseClass, Score } from '$lib/mapping/vocabulary';
 import type { Verdict } from '$lib/mapping/verdict';
 
 /** The trade's words as they stand on every screen. */
@@ -93,6 +93,12 @@ export const VERDICT_NAMES: Record<Verdict, string> = {
 	open: 'open',
 	positive: 'positive',
 	negative: 'negative'
+};
+
+export const EFFECT_NAMES: Record<Effect, string> = {
+	disturbed: 'disturbed',
+	intact: 'intact',
+	excluded: 'not counted'
 };
 
 export const CLASS_NAMES: Record<ResponseClass, string> = { language: 'language', 'speech-motor': 'speech-motor' };

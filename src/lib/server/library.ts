@@ -1,9 +1,7 @@
 import { readFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import type { Catalogue, CatalogueSet } from '$lib/stimuli/catalogue';
-
-/** Where the build puts the pictures and sounds, and the catalogue of the item sets. */
-const CATALOGUE = join('.media', 'catalogue.json');
+import { mediaFolder } from './media/serve-file';
 
 /** The item sets were not built on this machine. */
 export class LibraryMissing extends Error {
@@ -22,7 +20,7 @@ async function readCatalogue(): Promise<Catalogue> {
 	if (catalogue) return catalogue;
 	let text: string;
 	try {
-		text = await readFile(CATALOGUE, 'utf8');
+		text = await readFile(join(mediaFolder(), 'catalogue.json'), 'utf8');
 	} catch (failure) {
 		if ((failure as NodeJS.ErrnoException).code === 'ENOENT') throw new LibraryMissing();
 		throw failure;

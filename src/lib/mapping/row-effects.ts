@@ -7,11 +7,7 @@ import type { Effect, ResponseClass } from './vocabulary';
  *
  * @param asked the class the row is of
  */
-export function effectsOfRow(
-	state: CaseState,
-	row: Pick<Row, 'trials'>,
-	asked: ResponseClass = 'language'
-): Effect[] {
+export function effectsOfRow(state: CaseState, row: Pick<Row, 'trials'>, asked: ResponseClass = 'language'): Effect[] {
 	return row.trials.flatMap((id) => {
 		const found = state.trials.get(id)?.effect[asked] ?? 'pending';
 		return found === 'pending' ? [] : [found];

@@ -15,7 +15,9 @@ export function ringName(ring: {
 	const motor = ring.positive.includes('speech-motor');
 	const parts = [
 		`tag ${ring.tag}`,
-		motor ? `${VERDICT_NAMES[ring.verdict]} (${ring.positive.map(className).join(' and ')})` : VERDICT_NAMES[ring.verdict]
+		motor
+			? `${VERDICT_NAMES[ring.verdict]} (${ring.positive.map(className).join(' and ')})`
+			: VERDICT_NAMES[ring.verdict]
 	];
 	if (ring.valid > 0) parts.push(`${ring.disturbed} of ${ring.valid} disturbed`);
 	if (ring.excluded > 0) parts.push(`${ring.excluded} not counted`);

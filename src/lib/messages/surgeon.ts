@@ -5,6 +5,12 @@ import type { Hemisphere, ResponseClass, Score } from '$lib/mapping/vocabulary';
 import { milliamps, timeOfDay } from './format';
 import { CAUTIONS, CLASS_NAMES, KIND_NAMES, languageName, PURPOSE_NAMES, taskName, VERDICT_NAMES } from './trade';
 
+const decimals = new Intl.NumberFormat('en', {
+	minimumFractionDigits: 1,
+	maximumFractionDigits: 1,
+	roundingMode: 'floor'
+});
+
 /** Words of the surgeon's screen: few, because every one of them is read from three metres. */
 export const SURGEON = {
 	title: 'Surgeon screen',
@@ -69,20 +75,23 @@ function reasonName({ why, detail }: ExclusionReason): string {
 }
 
 /** How far a result is: "1 of 2 disturbed", "1 to go", "will be positive". That it will be negative is never said. */
-export function progress(row: SiteVerdict, asked: ResponseClass): string[] {
-	const of = `${row.disturbed} of ${row.valid} disturbed`;
+export function progress(row: SiteVerdict, asked: ResponseClass): { text: string; short?: string }[] {
+	const of = `${row.disturbed} of ${row.valid}`;
+	const disturbed = `${of} disturbed`;
 	return [
-		...(row.valid > 0 ? [asked === 'language' ? of : `${of}, ${CLASS_NAMES[asked]}`] : []),
-		...(row.remaining > 0 ? [toGo(row.remaining)] : []),
-		...(row.settled === 'positive' ? ['will be positive'] : [])
+		...(row.valid > 0
+			? [{ text: asked === 'language' ? disturbed : `${disturbed}, ${CLASS_NAMES[asked]}`, short: of }]
+			: []),
+		...(row.remaining > 0 ? [{ text: toGo(row.remaining) }] : []),
+		...(row.settled === 'positive' ? [{ text: 'will be positive' }] : [])
 	];
 }
 
 export function circumstances(trial: Trial, severalLanguages: boolean): string[] {
 	return [
 		...(trial.purpose !== null && trial.purpose !== 'mapping' ? [PURPOSE_NAMES[trial.purpose]] : []),
-		pairName(trial, severalLanguages),
-		...(trial.milliamps === null ? [] : [milliamps(trial.milliamps)])
+		...(trial.milliamps === null ? [] : [milliamps(trial.milliamps)]),
+		pairName(trial, severalLanguages)
 	];
 }
 
@@ -116,7 +125,7 @@ export function willBePositive(tags: readonly string[]): string {
 	return `will be positive: ${tags.join(', ')}`;
 }
 
-/** "Tag 7 was positive, now open (09:31:07)". */
+/** "Tag 7: positive, now open", and when. */
 export function changeAway(
 	changes: readonly {
 		tag: string;
@@ -126,27 +135,26 @@ export function changeAway(
 	at: number,
 	zone: string
 ): string[] {
-	const one = (change: (typeof changes)[number]) => {
-		const { tag, to, of } = change;
+	const one = ({ tag, to, of }: (typeof changes)[number]) => {
 		const what = of && [pairName(of, true), ...(of.class === 'language' ? [] : [CLASS_NAMES[of.class]])].join(' ');
-		return `Tag ${tag} was positive${what ? ` in ${what}` : ''}, now ${VERDICT_NAMES[to]}`;
+		return `Tag ${tag}${what ? `, ${what}` : ''}: was positive, now ${VERDICT_NAMES[to]}`;
 	};
 	return [...changes.map(one), timeOfDay(at, zone)];
 }
 
-/** "Not up to date since 09:31:07", and what is not heard. */
+/** "Not up to date since 09:31:07", and why. */
 export function notUpToDate(why: 'server' | 'examiner' | 'waiting', since: number, zone: string): string[] {
 	const causes = {
 		server: 'server not heard',
-		examiner: "examiner's device not heard",
+		examiner: 'examiner not heard',
 		waiting: 'entries wait to be sent'
 	};
 	return [`Not up to date since ${timeOfDay(since, zone)}`, causes[why]];
 }
 
-/** The screen cannot show so many numbers at their size. */
+/** The screen is too small for so many numbers at their size: it says how near one has to stand. */
 export function readableFrom(metres: number): string {
-	return `Screen too small: read the numbers from ${metres.toFixed(1)} m`;
+	return `Rings: read from ${decimals.format(metres)} m`;
 }
 
 export function caseLine(

@@ -1,54 +1,65 @@
-/** A list set into lines of a given width: what fits, and how many of its parts do not. */
+/** A few words that stand or fall together. */
+export interface Part {
+	text: string;
+	/** fewer words for the same, where there is no room for all */
+	short?: string;
+	/** ember is for disturbed trials and positive sites alone; mute is set in the regular weight, the rest bold */
+	tone: 'ink' | 'mute' | 'frost' | 'ember';
+}
+
+/** Parts in the order in which they may not be missed. */
+export interface Line {
+	parts: Part[];
+	/** says how many parts there was no room for; without it what is left out goes unsaid */
+	more?: (left: number) => string;
+}
+
+/** The room that a line has, in pixels, and how wide words are in it. */
+export interface Room {
+	width: number;
+	/** between two parts */
+	gap: number;
+	measure: (part: Part) => number;
+}
+
+/** The parts that are shown, in order, and how many are not. */
 export interface Fitted {
-	lines: string[][];
+	parts: Part[];
 	left: number;
 }
 
 /**
- * Sets parts one after another into at most `most` lines, dropping from the end what does not fit. Where parts are
- * dropped, room for `more` is kept on the last line.
- *
- * @param measure width of a text in pixels
- * @param gap pixels between two parts
- * @param more the words for "and n more"; without it what is dropped goes unsaid
+ * Sets a line into at most `most` lines of the room: in full, else in short words, else without its last parts. Words
+ * are never set smaller. The first part always stands.
  */
-export function fitParts(
-	parts: readonly string[],
-	width: number,
-	most: number,
-	measure: (text: string) => number,
-	gap: number,
-	more?: (left: number) => string
-): Fitted {
-	for (let shown = parts.length; shown > 0; shown--) {
-		const left = parts.length - shown;
-		const wanted = parts.slice(0, shown);
-		const lines = setLines(left > 0 && more ? [...wanted, more(left)] : wanted, width, most, measure, gap);
-		if (lines) return { lines, left };
+export function fitLine(line: Line, most: number, room: Room): Fitted {
+	const short = line.parts.map(({ short, ...part }) => ({ ...part, text: short ?? part.text }));
+	if (fits(line.parts, most, room)) return { parts: line.parts, left: 0 };
+	for (let shown = short.length; shown > 1; shown--) {
+		const left = short.length - shown;
+		const parts = [...short.slice(0, shown), ...moreOf(line, left)];
+		if (fits(parts, most, room)) return { parts, left };
 	}
-	return { lines: more && parts.length > 0 ? [[more(parts.length)]] : [], left: parts.length };
+	const left = short.length - 1;
+	const withMore = [...short.slice(0, 1), ...moreOf(line, left)];
+	return { parts: fits(withMore, most, room) ? withMore : short.slice(0, 1), left };
 }
 
-function setLines(
-	parts: readonly string[],
-	width: number,
-	most: number,
-	measure: (text: string) => number,
-	gap: number
-): string[][] | null {
-	const lines: string[][] = [];
-	let used = Infinity;
+function moreOf({ more }: Line, left: number): Part[] {
+	return more && left > 0 ? [{ text: more(left), tone: 'mute' }] : [];
+}
+
+function fits(parts: readonly Part[], most: number, { width, gap, measure }: Room): boolean {
+	let lines = 1;
+	let used = -gap;
 	for (const part of parts) {
 		const wide = measure(part);
-		if (wide > width) return null;
-		if (used + gap + wide <= width) {
-			lines.at(-1)!.push(part);
-			used += gap + wide;
-		} else {
-			if (lines.length === most) return null;
-			lines.push([part]);
-			used = wide;
+		if (used + gap + wide > width) {
+			lines++;
+			used = -gap;
 		}
+		used += gap + wide;
+		if (used > width || lines > most) return false;
 	}
-	return lines;
+	return true;
 }

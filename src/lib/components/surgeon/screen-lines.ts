@@ -16,23 +16,14 @@ import {
 	willBePositive
 } from '$lib/messages/surgeon';
 import { toGo, toTestAgain, withoutScore, type ToGo } from './attention';
+import type { Line, Part } from './fit-line';
 import { lastTrial } from './last-trial';
 import { countResults, type TagView } from './tag-views';
 
-/** A few words that stand or fall together. */
-export interface Part {
-	text: string;
-	/** ember is for disturbed trials and positive sites alone */
-	tone: 'ink' | 'mute' | 'frost' | 'ember';
-}
-
-/** One line of the screen, its parts in the order in which they may not be missed. */
-export interface ScreenLine {
+/** One line of the screen. */
+export interface ScreenLine extends Line {
 	key: string;
 	place: 'top' | 'bottom';
-	parts: Part[];
-	/** says how many parts there was no room for */
-	more?: (left: number) => string;
 }
 
 const part = (text: string, tone: Part['tone'] = 'ink'): Part => ({ text, tone });
@@ -49,7 +40,7 @@ export function lastTrialLine(state: CaseState): ScreenLine {
 		parts: [
 			part(subject(trial)),
 			...outcome(trial, status).map((text) => part(text, disturbed ? 'ember' : 'ink')),
-			...(row ? progress(row, last.class) : []).map((text) => part(text, 'mute')),
+			...(row ? progress(row, last.class) : []).map((words): Part => ({ ...words, tone: 'mute' })),
 			...circumstances(trial, hasSeveralLanguages(state)).map((text) => part(text, 'mute'))
 		]
 	};
@@ -150,4 +141,19 @@ function pairText(state: CaseState, pair: TaskLanguage): string {
 
 function hasSeveralLanguages(state: CaseState): boolean {
 	return new Set(taskLanguages(state).map(({ language }) => language)).size > 1;
+}
+
+/**
+ * Which lines are wished for, in order: every line once, the most wanted first, then those that need a second line.
+ *
+ * @param overflows whether a line has parts that do not fit on one line
+ * @returns keys of lines; the last trial stands on its first line anyway
+ */
+export function wishOrder(
+	last: ScreenLine,
+	lines: readonly ScreenLine[],
+	overflows: (line: ScreenLine) => boolean
+): string[] {
+	const second = [last, ...lines].filter(overflows).map(({ key }) => key);
+	return [...lines.map(({ key }) => key), ...second];
 }

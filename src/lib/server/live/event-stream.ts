@@ -18,7 +18,7 @@ const MOST_BEHIND = 2000;
  * @param open called once with what sends and what ends the stream; what it returns is called when the reader is gone
  * @param heartbeat the data of a heartbeat
  */
-export function eventStream(open: (send: Send) => () => void, heartbeat: () => unknown): Response {
+export function eventStream(open: (send: Send, end: () => void) => () => void, heartbeat: () => unknown): Response {
 	const encoder = new TextEncoder();
 	let close = () => {};
 	const body = new ReadableStream<Uint8Array>(

@@ -13,7 +13,7 @@ export const COMMAND_NAMES = {
 	'next-language': 'next language',
 	afterdischarge: 'afterdischarge',
 	seizure: 'seizure',
-	blank: 'clear view',
+	blank: 'blank view',
 	earlier: 'earlier trial',
 	later: 'later trial',
 	newest: 'back to now',

@@ -1,5 +1,6 @@
 import { v4, v7 } from 'uuid';
 import type { AnyCaseEvent, EventData, EventType } from '$lib/mapping/events';
+import { RUNNING_TASKS } from '$lib/mapping/vocabulary';
 import { copyForCase, type CatalogueSet } from '$lib/stimuli/catalogue';
 import { FINISHED, finishedTrials, PREPARED } from './scenario';
 
@@ -68,7 +69,7 @@ export function finishedLog(sets: CatalogueSet[]): AnyCaseEvent[] {
 		used.set(id, next + 1);
 		const trial = v4();
 		const { task, language } = set;
-		const item = set.items[next % set.items.length]!.id;
+		const item = set.items[RUNNING_TASKS.includes(task) ? 0 : next % set.items.length]!.id;
 		diary.wait(FINISHED.every);
 		diary.note('trial-presented', { trial, item, task, language, tag, stimulated: tag !== null, milliamps, run });
 		diary.wait(A_SECOND / 10);

@@ -31,7 +31,6 @@ export async function serve({ port, host }) {
 
 /** @param {import('node:http').Server} server */
 function stop(server) {
-	server.close();
+	server.close(() => process.emit(/** @type {any} */ ('sveltekit:shutdown')));
 	server.closeAllConnections();
-	process.emit(/** @type {any} */ ('sveltekit:shutdown'));
 }

@@ -12,11 +12,12 @@ const MOST_BEHIND = 2000;
 /**
  * A response that stays open and carries messages (WHATWG HTML, server-sent events), with a heartbeat each second.
  *
- * @param open called once with the function that sends; what it returns is called when the reader is gone
+ * @param open called once with the functions that send and that end the stream; what it returns is called when the
+ *   stream has ended, whoever ended it
  * @param heartbeat the data of a heartbeat
  */
 export function eventStream(
-	open: (send: (message: StreamMessage) => void) => () => void,
+	open: (send: (message: StreamMessage) => void, end: () => void) => () => void,
 	heartbeat: () => unknown
 ): Response {
 	const encoder = new TextEncoder();
@@ -42,7 +43,7 @@ export function eventStream(
 				const beat = setInterval(() => send({ name: 'heartbeat', data: heartbeat() }), 1000);
 				close = () => stop(false);
 				write('retry: 500\n\n');
-				leave = open(send);
+				leave = open(send, () => stop(true));
 				send({ name: 'heartbeat', data: heartbeat() });
 			},
 			cancel() {

@@ -1,5 +1,5 @@
 import { eventStream, type StreamMessage } from '$lib/server/live/event-stream';
-import { hub, staffRoom } from '$lib/server/live/hub';
+import { accountRoom, hub, staffRoom } from '$lib/server/live/hub';
 import { lastHeard } from '$lib/server/live/presence';
 import { BOOT, serverNow } from '$lib/server/live/server-clock';
 import { entriesAfter, type StoredEvent } from '$lib/server/log/log';
@@ -13,7 +13,7 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 	if (!after.ok) return after.response;
 	let reached = after.position;
 
-	const follow = (send: (message: StreamMessage) => void) => {
+	const follow = (send: (message: StreamMessage) => void, end: () => void) => {
 		let missed: StoredEvent[] | null = [];
 		const deliver = (events: StoredEvent[]) => {
 			for (const event of events) {
@@ -23,10 +23,11 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 			}
 		};
 		// Listen first, then read: what is stored in between waits its turn.
-		const leave = hub.listen(staffRoom(code), {
+		const leaveCase = hub.listen(staffRoom(code), {
 			entries: (events) => (missed ? missed.push(...events) : deliver(events)),
 			passing: ({ name, data }) => send({ name, data })
 		});
+		const leaveAccount = hub.listen(accountRoom(locals.account!.id), { passing: end });
 		for (const data of lastHeard(code)) send({ name: 'presence', data });
 		entriesAfter(code, reached).then(
 			(events) => {
@@ -36,10 +37,13 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 			},
 			(failure: unknown) => {
 				console.error('stream', code, failure);
-				leave();
+				end();
 			}
 		);
-		return leave;
+		return () => {
+			leaveCase();
+			leaveAccount();
+		};
 	};
 
 	return eventStream(follow, () => ({ now: serverNow(), boot: BOOT, position: reached }));

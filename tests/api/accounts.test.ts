@@ -419,6 +419,61 @@ describe('changing accounts', () => {
 	});
 });
 
+describe('an open stream of a case', () => {
+	async function watching(name: string) {
+		const member = await newMember(server, members.administrator, name, ['surgeon']);
+		const made = await members.examiner.client.post('/api/cases', {
+			hemisphere: 'left',
+			languages: ['en'],
+			team: [member.id, members.administrator.id]
+		});
+		const path = `/api/cases/${made.body.code}/stream`;
+		const controller = new AbortController();
+		const cookie = [...member.client.cookies].map(([key, value]) => `${key}=${value}`).join('; ');
+		const response = await fetch(server.url + path, { headers: { cookie }, signal: controller.signal });
+		expect(response.status).toBe(200);
+		/** whether the server ends it within the milliseconds */
+		const ends = async (within: number) => {
+			const timer = setTimeout(() => controller.abort(), within);
+			const ended = await response.text().then(
+				() => true,
+				() => false
+			);
+			clearTimeout(timer);
+			return ended;
+		};
+		return { ...member, code: made.body.code as string, path, ends };
+	}
+
+	it('goes on while nothing changes for who reads it', async () => {
+		const { ends } = await watching('steady');
+		expect(await ends(1500)).toBe(false);
+	});
+
+	it('ends with the account, which is not let in again', async () => {
+		const { id, client, path, ends } = await watching('stopped');
+		await administrator.json('PATCH', `/api/people/${id}`, { disabled: true });
+		expect(await ends(3000)).toBe(true);
+		expect((await client.get(path)).status).toBe(401);
+	});
+
+	it('ends when its reader leaves the team', async () => {
+		const { client, code, path, ends } = await watching('moved');
+		expect((await administrator.json('PUT', `/api/cases/${code}/team`, { team: [members.examiner.id] })).status).toBe(
+			200
+		);
+		expect(await ends(3000)).toBe(true);
+		expect((await client.get(path)).status).toBe(404);
+	});
+
+	it('ends when its reader signs out', async () => {
+		const { client, path, ends } = await watching('done');
+		expect((await client.copy().post('/api/sign-out')).status).toBe(204);
+		expect(await ends(3000)).toBe(true);
+		expect((await client.get(path)).status).toBe(401);
+	});
+});
+
 describe('the settings of the clinic', () => {
 	it('take a time zone that exists, and no other', async () => {
 		const set = (zone: unknown) => administrator.json('PATCH', '/api/settings', { zone });

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { Knex } from 'knex';
 import { db } from '../database';
+import { endStreamsOf } from '$lib/server/live/access';
 import type { AccountRow, SessionRow } from '../tables';
 import type { Role } from './roles';
 
@@ -81,9 +82,10 @@ export async function createAccount(given: NewAccount): Promise<Account | null> 
 /** Sets a password and ends every session that the old one opened. */
 export async function setPassword(id: string, passwordHash: string): Promise<void> {
 	await db.transaction(async (trx) => await writePassword(trx, id, passwordHash));
+	endStreamsOf([id]);
 }
 
-/** As `setPassword`, inside a transaction of somebody else. */
+/** As `setPassword`, inside a transaction of somebody else, who ends the open streams after it. */
 export async function writePassword(trx: Knex.Transaction, id: string, passwordHash: string): Promise<void> {
 	await trx<AccountRow>('accounts').where({ id }).update({ password_hash: passwordHash });
 	await trx<SessionRow>('sessions').where({ account_id: id }).delete();
@@ -101,7 +103,7 @@ export interface AccountChange {
  * @returns null for an unknown account, `last-administrator` when nobody would be left who could undo the change
  */
 export async function changeAccount(id: string, change: AccountChange): Promise<Account | null | 'last-administrator'> {
-	return await db.transaction(async (trx) => {
+	const changed = await db.transaction(async (trx) => {
 		const row = await trx<AccountRow>('accounts').where({ id }).first();
 		if (!row) return null;
 		const next: AccountRow = { ...row };
@@ -116,6 +118,8 @@ export async function changeAccount(id: string, change: AccountChange): Promise<
 		if (disabled_at !== null) await trx<SessionRow>('sessions').where({ account_id: id }).delete();
 		return toAccount(next);
 	});
+	endStreamsOf([id]);
+	return changed;
 }
 
 /** Whether somebody can sign in and administer: one who never set a password cannot. */

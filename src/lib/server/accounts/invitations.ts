@@ -1,6 +1,7 @@
 import { createHash, randomBytes } from 'node:crypto';
 import type { Knex } from 'knex';
 import { db } from '../database';
+import { endStreamsOf } from '$lib/server/live/access';
 import type { AccountRow, InvitationRow } from '../tables';
 import { newAccountRow, toAccount, writePassword, type Account } from './accounts';
 
@@ -72,13 +73,15 @@ export async function invitee(token: string, knex: Knex = db): Promise<Account |
 
 /** Uses a link: sets the password, ends the account's sessions. Null, with nothing changed, when it does not work. */
 export async function acceptInvitation(token: string, passwordHash: string): Promise<Account | null> {
-	return await db.transaction(async (trx) => {
+	const accepted = await db.transaction(async (trx) => {
 		const account = await invitee(token, trx);
 		if (!account) return null;
 		await useUp(trx, token);
 		await writePassword(trx, account.id, passwordHash);
 		return { ...account, joined: true };
 	});
+	if (accepted) endStreamsOf([accepted.id]);
+	return accepted;
 }
 
 /** While there is no account, makes the link of the first administrator; null afterwards. */

@@ -1,6 +1,7 @@
 import type { Cookies } from '@sveltejs/kit';
 import { Lucia, TimeSpan } from 'lucia';
 import { db } from '../database';
+import { endStreamsOf } from '$lib/server/live/access';
 import type { Account } from './accounts';
 import { SessionAdapter } from './session-adapter';
 
@@ -47,8 +48,15 @@ export async function startSession(cookies: Cookies, url: URL, account: Account)
 	writeCookie(cookies, url, session.id);
 }
 
-export async function endSession(cookies: Cookies, url: URL, session: string): Promise<void> {
+/** Ends the session of a request, where it has one, and the streams that it opened. */
+export async function endSession(
+	cookies: Cookies,
+	url: URL,
+	{ account, session }: { account: Account | null; session: string | null }
+): Promise<void> {
+	if (!account || !session) return;
 	await lucia.invalidateSession(session);
+	endStreamsOf([account.id]);
 	cookies.delete(cookieName(url), { path: '/', secure: isSecure(url) });
 }
 

@@ -13,8 +13,8 @@ export interface Listener {
 }
 
 /**
- * Carries what has happened to those who watch. Rooms are named by what they are about: the staff of a case, or one
- * patient view. It holds listeners only; the log is the memory.
+ * Carries what has happened to those who watch. Rooms are named by what they are about: the staff of a case, one
+ * patient view, one account. It holds listeners only; the log is the memory.
  */
 class Hub {
 	#rooms = new Map<string, Set<Listener>>();
@@ -51,4 +51,9 @@ export function staffRoom(code: string): string {
 
 export function patientRoom(view: string): string {
 	return `patient view ${view}`;
+}
+
+/** What is said here: the rights of an account changed. */
+export function accountRoom(account: string): string {
+	return `account ${account}`;
 }

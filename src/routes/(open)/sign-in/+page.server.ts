@@ -31,7 +31,7 @@ export const actions: Actions = {
 		redirect(303, sameSite(String(form.get('to') ?? ''), url));
 	},
 	out: async ({ locals, cookies, url }) => {
-		if (locals.session) await endSession(cookies, url, locals.session);
+		await endSession(cookies, url, locals);
 		redirect(303, '/sign-in');
 	}
 };

@@ -21,7 +21,7 @@ export const actions: Actions = {
 		if (fault) return fail(422, { fault });
 		const account = await acceptInvitation(params.token, await hashPassword(password));
 		if (!account) error(404, INVITATION.gone);
-		if (locals.session) await endSession(cookies, url, locals.session);
+		await endSession(cookies, url, locals);
 		await startSession(cookies, url, account);
 		redirect(303, '/cases');
 	}

@@ -1,5 +1,5 @@
 import { eventStream, type Send } from '$lib/server/live/event-stream';
-import { hub, staffRoom } from '$lib/server/live/hub';
+import { accountRoom, hub, staffRoom } from '$lib/server/live/hub';
 import { lastHeard } from '$lib/server/live/presence';
 import { BOOT, serverNow } from '$lib/server/live/server-clock';
 import { entriesAfter, type StoredEvent } from '$lib/server/log/log';
@@ -21,10 +21,11 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 			if (fresh.length > 0) send(fresh.map((event) => ({ id: event.position, data: event })));
 		};
 		// Listen first, then read: what is stored in between waits its turn.
-		const leave = hub.listen(staffRoom(code), {
+		const leaveCase = hub.listen(staffRoom(code), {
 			entries: (events) => (missed ? missed.push(...events) : deliver(events)),
 			passing: ({ name, data }) => send({ name, data })
 		});
+		const leaveAccount = hub.listen(accountRoom(locals.account!.id), { passing: end });
 		for (const data of lastHeard(code)) send({ name: 'presence', data });
 		entriesAfter(code, reached).then(
 			(events) => {
@@ -38,7 +39,10 @@ export const GET: RequestHandler = async ({ locals, url, request }) => {
 				end();
 			}
 		);
-		return leave;
+		return () => {
+			leaveCase();
+			leaveAccount();
+		};
 	};
 
 	return eventStream(follow, () => ({ now: serverNow(), boot: BOOT, position: reached }));

@@ -2,6 +2,7 @@ import { json } from '@sveltejs/kit';
 import { z } from 'zod';
 import { readJson, refusal } from '$lib/server/answer';
 import { caseByCode, setTeam, UnknownAccount } from '$lib/server/cases/cases';
+import { endStreamsOf } from '$lib/server/live/access';
 import type { RequestHandler } from './$types';
 
 const schema = z.strictObject({ team: z.array(z.string()).max(100) });
@@ -16,5 +17,6 @@ export const PUT: RequestHandler = async ({ request, locals }) => {
 		throw failure;
 	}
 	const { code, team } = (await caseByCode(locals.case.code))!;
+	endStreamsOf(locals.case.team.map(({ id }) => id).filter((id) => !team.some((member) => member.id === id)));
 	return json({ code, team });
 };

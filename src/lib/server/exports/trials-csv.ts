@@ -1,5 +1,12 @@
 import { caseItems } from '../../mapping/case-items';
-import { dataOf, standing, type CaseState, type ExclusionReason, type Trial } from '../../mapping/case-state';
+import {
+	dataOf,
+	standing,
+	trialsInOrder,
+	type CaseState,
+	type ExclusionReason,
+	type Trial
+} from '../../mapping/case-state';
 import type { EventData } from '../../mapping/events';
 import { writeCsv, type Cell } from './csv';
 import { protocolCells } from './protocol-columns';
@@ -15,8 +22,7 @@ import { zonedTime } from './zoned-time';
 export function trialsCsv(code: string, state: CaseState, zone: string): string {
 	const answers = answersOf(state);
 	const protocol = protocolCells(state.protocol);
-	const trials = [...state.trials.values()].sort((a, b) => a.order - b.order);
-	const rows = trials.map((trial): Record<TrialColumn, Cell> => ({
+	const rows = trialsInOrder(state).map((trial): Record<TrialColumn, Cell> => ({
 		case: code,
 		...presentation(state, trial, zone),
 		answer: answers.get(itemKey(trial.item, trial)) ?? null,

@@ -17,8 +17,11 @@ export async function verifyChains(db: Knex, only?: string): Promise<ChainReport
 
 /** Every case, one whose own row was taken away included. */
 async function codesIn(db: Knex): Promise<string[]> {
-	const logged = db('case_log').distinct('case_code as code');
-	return await db('cases').select('code').union(logged).orderBy('code').pluck('code');
+	const rows = await db<{ code: string }>('cases')
+		.select('code')
+		.union(db('case_log').select('case_code as code'))
+		.orderBy('code');
+	return rows.map(({ code }) => code);
 }
 
 async function verifyChain(db: Knex, code: string): Promise<ChainReport> {

@@ -66,17 +66,29 @@ describe('readSet', () => {
 	});
 
 	it.each([
-		['Obj Dog,dog,,,@iconify-json/noto:dog,,,CC0-1.0,,,,,', 'column id: "Obj Dog" is not an id in kebab case, as obj-dog'],
+		[
+			'Obj Dog,dog,,,@iconify-json/noto:dog,,,CC0-1.0,,,,,',
+			'column id: "Obj Dog" is not an id in kebab case, as obj-dog'
+		],
 		['obj-dog,,,,@iconify-json/noto:dog,,,CC0-1.0,,,,,', 'column answer: is empty'],
 		['obj-dog,dog,dog,,@iconify-json/noto:dog,,,CC0-1.0,,,,,', 'column accepted: "dog" repeats the answer "dog"'],
 		['obj-dog,dog,pup;pup,,@iconify-json/noto:dog,,,CC0-1.0,,,,,', 'column accepted: "pup;pup" has one answer twice'],
 		['obj-dog,dog,,,../dog.png,,,CC0-1.0,,,,,', 'column picture: "../dog.png" is not package:name or media/file.svg'],
-		['obj-dog,dog,,,,,,CC0-1.0,,,,,', 'column picture: is empty, and so are text and sound: the patient would have no prompt'],
+		[
+			'obj-dog,dog,,,,,,CC0-1.0,,,,,',
+			'column picture: is empty, and so are text and sound: the patient would have no prompt'
+		],
 		['obj-dog,dog,,,,dog,,CC0-1.0,,,,,', 'column sound: is empty, but spoken has words for a voice'],
 		['obj-dog,dog,,,,,flite:rms,CC0-1.0,,,,,', 'column spoken: is empty, but sound names a voice'],
 		['obj-dog,dog,,,,dog,flite:kal,CC0-1.0,,,,,', 'column sound: "flite:kal" is not a known voice (flite:rms)'],
-		['obj-dog,dog,,,@iconify-json/noto:dog,,,MIT,,,,,', 'column licence: "MIT" is not among the licenses of datapackage.json'],
-		['obj-dog,dog,,,@iconify-json/noto:dog,,,CC0-1.0,,,one,,', 'column syllables: "one" is not a whole number from 1 to 99'],
+		[
+			'obj-dog,dog,,,@iconify-json/noto:dog,,,MIT,,,,,',
+			'column licence: "MIT" is not among the licenses of datapackage.json'
+		],
+		[
+			'obj-dog,dog,,,@iconify-json/noto:dog,,,CC0-1.0,,,one,,',
+			'column syllables: "one" is not a whole number from 1 to 99'
+		],
 		['obj-dog,dog,,,@iconify-json/noto:dog,,,CC0-1.0,,,,"5,28",', 'column zipf: "5,28" is not a Zipf value as 4.374']
 	])('names row and column of %s', async (row, problem) => {
 		await write(['obj-cat,cat,,,@iconify-json/noto:cat,,,CC0-1.0,,,,,', row]);
@@ -126,6 +138,8 @@ describe('readSet', () => {
 	it('wants the columns declared as they are', async () => {
 		const resources = [{ name: 'items', path: 'items.csv', schema: { fields: ITEM_FIELDS.slice(1) } }];
 		await write([DOG], { resources });
-		expect(await problems()).toEqual([expect.stringMatching(/^datapackage\.json, resources\.0\.schema\.fields: must be id/)]);
+		expect(await problems()).toEqual([
+			expect.stringMatching(/^datapackage\.json, resources\.0\.schema\.fields: must be id/)
+		]);
 	});
 });

@@ -6,7 +6,7 @@ export const PICTURE_WIDTHS = [384, 1024] as const;
 /** Share of the frame that the longer side of the ink takes, so that all pictures look equally large. */
 const INK_SHARE = 0.92;
 /** Everything is drawn larger than the widest file first, so that the crop never has to be enlarged. */
-const DRAWN = 1536;
+const DRAWN = 1280;
 /** Alpha of 255 below which a pixel is no ink: a faint shadow must not move the picture. */
 const FAINT = 16;
 
@@ -49,15 +49,13 @@ export async function drawPicture(source: Buffer): Promise<{ width: number; webp
 		.raw()
 		.toBuffer({ resolveWithObject: true });
 	const raw = { width: drawn.info.width, height: drawn.info.height, channels: 4 } as const;
-	const ink = await sharp(drawn.data, { raw })
-		.extract(inkBox(drawn.data, raw.width, raw.height))
-		.png({ compressionLevel: 0 })
-		.toBuffer();
+	const ink = inkBox(drawn.data, raw.width, raw.height);
 	return Promise.all(
 		PICTURE_WIDTHS.map(async (frame) => {
 			const inner = Math.round(frame * INK_SHARE);
 			const margin = Math.floor((frame - inner) / 2);
-			const webp = await sharp(ink)
+			const webp = await sharp(drawn.data, { raw })
+				.extract(ink)
 				.resize(inner, inner, { fit: 'contain', background: 'transparent' })
 				.extend({
 					top: margin,
@@ -66,7 +64,7 @@ export async function drawPicture(source: Buffer): Promise<{ width: number; webp
 					right: frame - inner - margin,
 					background: 'transparent'
 				})
-				.webp({ quality: 90, alphaQuality: 100, smartSubsample: true })
+				.webp({ quality: 90, alphaQuality: 100, effort: 2 })
 				.toBuffer();
 			return { width: frame, webp };
 		})

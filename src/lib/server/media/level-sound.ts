@@ -4,8 +4,11 @@ import type { Sound } from './wav';
 export const LEVEL = 0.1;
 
 const FRAME = 0.005;
-/** A frame belongs to the speech when it is within 40 dB of the loudest: weak beginnings such as f and th stay. */
-const SILENCE = 0.01;
+/**
+ * A frame belongs to the speech when it is within 35 dB of the loudest: the voice's f and th (-30 dB) stay, the noise it
+ * makes before a p or c (-40 dB) goes.
+ */
+const SILENCE = 0.0178;
 const BEFORE = 0.02;
 const AFTER = 0.06;
 const FADE = 0.005;

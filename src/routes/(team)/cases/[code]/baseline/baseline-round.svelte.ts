@@ -6,6 +6,7 @@ import type { KeptItem } from '$lib/mapping/case-items';
 import type { Trial } from '$lib/mapping/case-state';
 import type { Score } from '$lib/mapping/vocabulary';
 import { BASELINE } from '$lib/messages/baseline';
+import { SvelteSet } from 'svelte/reactivity';
 
 /** One baseline round as its page runs it: which item comes next, and what each key does. */
 export class BaselineRound {
@@ -15,7 +16,7 @@ export class BaselineRound {
 	/** what the therapist is told in passing */
 	hint = $state<string | null>(null);
 
-	#skipped = $state.raw<ReadonlySet<string>>(new Set());
+	#skipped = new SvelteSet<string>();
 	#busy = false;
 
 	constructor(
@@ -70,7 +71,7 @@ export class BaselineRound {
 
 	async begin(): Promise<void> {
 		await this.#do(async () => {
-			this.#skipped = new Set();
+			this.#skipped.clear();
 			await this.conductor.openRun();
 		});
 	}
@@ -115,7 +116,7 @@ export class BaselineRound {
 
 	skip(): void {
 		const { item } = this;
-		if (item && !this.#trial) this.#skipped = new Set(this.#skipped).add(item.id);
+		if (item && !this.#trial) this.#skipped.add(item.id);
 	}
 
 	async #present(): Promise<void> {

@@ -184,7 +184,6 @@ export const RESULTS_PART = {
 	tags: 'Each tag, everything together',
 	tag: 'Tag',
 	result: 'Result',
-	positiveIn: 'Positive for',
 	stillOpen: 'Still to do',
 	rows: 'Each tag, task and language',
 	askedFor: 'Results for',
@@ -201,7 +200,6 @@ export const RESULTS_PART = {
 	rate: (share: string, low: string, high: string) => `${share} (95 % interval ${low} to ${high})`,
 	disturbedOf: (k: number, n: number) => `${k} of ${n} disturbed`,
 	of: (k: number, n: number) => `${k} of ${n}`,
-	downloads: 'Download',
 	trialsCsv: 'Trials (CSV)',
 	sitesCsv: 'Sites (CSV)',
 	settled: (result: string) => `will be ${result}`
@@ -210,7 +208,6 @@ export const RESULTS_PART = {
 export const DETAILS_PART = {
 	title: 'Operation',
 	save: 'Save the details',
-	saving: 'Saving ...',
 	changed: 'Details changed',
 	unchanged: 'Nothing is changed.',
 	team: 'Team',

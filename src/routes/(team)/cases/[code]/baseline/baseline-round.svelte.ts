@@ -114,6 +114,14 @@ export class BaselineRound {
 		});
 	}
 
+	/** Answers for a patient view that has not confirmed its last item. */
+	async sayShown(now: number, shown: boolean): Promise<void> {
+		await this.#do(async () => {
+			const overdue = this.link() === null ? null : this.conductor.overdue(now);
+			if (overdue) await this.conductor.sayShown(overdue.id, shown);
+		});
+	}
+
 	skip(): void {
 		const { item } = this;
 		if (item && !this.#trial) this.#skipped.add(item.id);

@@ -84,3 +84,22 @@ export function baselineRate(items: readonly BaselineItem[]): BaselineRate | nul
 	const counted = wrong + answers.filter((answer) => answer === 'right').length;
 	return counted === 0 ? null : { wrong, counted, interval: wilson(wrong, counted) };
 }
+
+/**
+ * The item that a round shows next: the first kept one, in the order they were copied, without an answer that counts;
+ * those that were skipped, or whose answer did not count, come after the others.
+ *
+ * @returns null when every kept item has its answer
+ */
+export function nextInRound(
+	items: readonly BaselineItem[],
+	round: number,
+	skipped: ReadonlySet<string> = new Set()
+): BaselineItem | null {
+	const open = items.filter(({ item, rounds }) => {
+		const answer = rounds[round]?.answer;
+		return item.kept && answer !== 'right' && answer !== 'wrong';
+	});
+	const fresh = open.filter(({ item, rounds }) => !rounds[round] && !skipped.has(item.id));
+	return fresh[0] ?? open[0] ?? null;
+}

@@ -37,7 +37,6 @@ export const CASE_FORM = {
 	languagesMissing: 'Choose at least one language.',
 	planned: 'Planned date',
 	plannedHint: 'It can be left empty.',
-	plannedWrong: 'This is no date.',
 	team: 'Team',
 	teamHint: 'Only these people see what is in the case. You are on it.',
 	teamHintAdministrator: 'Only these people see what is in the case.',

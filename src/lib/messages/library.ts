@@ -36,7 +36,7 @@ export const LIBRARY_SET = {
 	accepted: 'Also accepted',
 	category: 'Category',
 	syllables: 'Syllables',
-	frequency: 'Word frequency (Zipf)',
+	frequency: 'Zipf frequency',
 	licence: 'Licence and credit',
 	unknown: 'not known',
 	hear: (answer: string) => `Hear ${answer}`,

@@ -95,13 +95,13 @@ export function circumstances(trial: Trial, severalLanguages: boolean): string[]
 	];
 }
 
-/** "2 (1/3)", with the task and class where they are not plain. */
+/** "2 (1/3)", with the class where it is not language, after the task and language where they are given. */
 export function againName(
 	again: { tag: string; class: ResponseClass; disturbed: number; valid: number },
 	pair: string | null
 ): string {
-	const of = [share(again), pair, again.class === 'language' ? null : CLASS_NAMES[again.class]];
-	return `${again.tag} (${of.filter((part) => part !== null).join(' ')})`;
+	const of = again.class === 'language' ? share(again) : `${share(again)} ${CLASS_NAMES[again.class]}`;
+	return `${pair === null ? '' : `${pair}: `}${again.tag} (${of})`;
 }
 
 /** "1 to go: 6, 12"; neighbours are drawn together, and a long list is counted. */

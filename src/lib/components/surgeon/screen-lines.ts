@@ -70,25 +70,29 @@ function countsLine(tags: readonly TagView[]): ScreenLine {
 	return {
 		key: 'counts',
 		place: 'top',
-		parts: [
-			part(countName('positive', positive), positive > 0 ? 'ember' : 'mute'),
-			part(countName('negative', negative), 'frost'),
-			part(countName('open', open), 'mute'),
-			...(untested > 0 ? [part(countName('untested', untested), 'mute')] : [])
-		]
+		parts:
+			tags.length === 0
+				? []
+				: [
+						part(countName('positive', positive), positive > 0 ? 'ember' : 'mute'),
+						part(countName('negative', negative), negative > 0 ? 'frost' : 'mute'),
+						part(countName('open', open), 'mute'),
+						...(untested > 0 ? [part(countName('untested', untested), 'mute')] : [])
+					]
 	};
 }
 
+/** The task and language stand once, before the first tag of theirs. */
 function againLine(state: CaseState): ScreenLine {
-	const again = toTestAgain(state);
 	const several = taskLanguages(state).length > 1;
+	const again = toTestAgain(state).map((one) => ({ one, pair: several ? pairText(state, one) : null }));
+	const parts = again.map(({ one, pair }, index) =>
+		part(againName(one, pair === again[index - 1]?.pair ? null : pair))
+	);
 	return {
 		key: 'again',
 		place: 'bottom',
-		parts:
-			again.length === 0
-				? []
-				: [part(SURGEON.testAgain), ...again.map((one) => part(againName(one, several ? pairText(state, one) : null)))],
+		parts: parts.length === 0 ? [] : [part(SURGEON.testAgain), ...parts],
 		more: SURGEON.more
 	};
 }

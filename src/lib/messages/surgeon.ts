@@ -20,7 +20,7 @@ export const SURGEON = {
 	testAgain: 'Test again',
 	notScored: 'Not scored',
 	contested: 'Contested',
-	bar: (number: number) => `Bar ${number}`,
+	bar: (number: number, pair: string) => `Bar ${number}: ${pair}`,
 	complete: 'complete',
 	more: (left: number) => `and ${left} more`,
 	evenMore: () => 'and more',

@@ -143,7 +143,7 @@ describe('what needs attention', () => {
 				]
 			}
 		]);
-		expect(lines(log)['to-go-object-naming-de']).toBe('Bar 2 | object naming German | 2 to go: 2 | 3 to go: 4 to 6');
+		expect(lines(log)['to-go-object-naming-de']).toBe('Bar 2: object naming German | 2 to go: 2 | 3 to go: 4 to 6');
 	});
 
 	it('says which trials wait for a score and which are contested, the last trial apart', () => {

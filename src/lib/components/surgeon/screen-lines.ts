@@ -86,9 +86,11 @@ function countsLine(tags: readonly TagView[]): ScreenLine {
 function againLine(state: CaseState): ScreenLine {
 	const several = taskLanguages(state).length > 1;
 	const again = toTestAgain(state).map((one) => ({ one, pair: several ? pairText(state, one) : null }));
-	const parts = again.map(({ one, pair }, index) =>
-		part(againName(one, pair === again[index - 1]?.pair ? null : pair))
-	);
+	const parts = again.map(({ one, pair }, index): Part => ({
+		text: againName(one, pair === again[index - 1]?.pair ? null : pair),
+		short: againName(one, null),
+		tone: 'ink'
+	}));
 	return {
 		key: 'again',
 		place: 'bottom',
@@ -121,11 +123,7 @@ function toGoLines(state: CaseState): ScreenLine[] {
 		place: 'bottom',
 		parts:
 			pairs.length > 1
-				? [
-						part(SURGEON.bar(index + 1), 'mute'),
-						part(pairText(state, pair)),
-						...toGoParts(pair, [part(SURGEON.complete, 'mute')])
-					]
+				? [part(SURGEON.bar(index + 1, pairText(state, pair))), ...toGoParts(pair, [part(SURGEON.complete, 'mute')])]
 				: toGoParts(pair, []),
 		more: SURGEON.evenMore
 	}));

@@ -5,13 +5,14 @@ const WEIGHTS = { mute: 400, ink: 700, frost: 700, ember: 700 };
 /** Words are measured once, at this size; their width grows with it. */
 const SIZE = 100;
 
+const known = new Map<string, number>();
+let ruler: HTMLElement | undefined;
+
 /** Until these are there, widths would be those of another font. */
 export async function loadFonts(): Promise<void> {
 	await Promise.all([400, 700].map(async (weight) => await document.fonts.load(`${weight} ${SIZE}px ${FAMILY}`)));
+	known.clear();
 }
-
-const known = new Map<string, number>();
-let ruler: HTMLElement | undefined;
 
 /** Width in pixels of a part at a font size in pixels. Measured on the page: a canvas knows no tabular digits. */
 export function partWidth({ text, tone }: Part, font: number): number {

@@ -203,16 +203,23 @@ async function expectNothingOutside(page: Page): Promise<void> {
 	}
 }
 
-test('says so when a small screen cannot show so many numbers at their size', async ({ page }) => {
-	await page.setViewportSize({ width: 1280, height: 800 });
-	const made = await seed(
-		[['1', 'i']],
-		Array.from({ length: 30 }, (_, index) => String(index + 1))
-	);
-	await open(page, made, { pxPerMm: 96 / 25.4 });
-	await expect(page.getByText(/^Rings: read from [12]\.\d m$/)).toBeVisible();
-	await expectNothingOutside(page);
-});
+for (const [width, height, tags] of [
+	[1280, 800, 30],
+	[1180, 820, 14]
+] as const) {
+	test(`says so when ${tags} numbers are too many for ${width} x ${height}`, async ({ page }) => {
+		await page.setViewportSize({ width, height });
+		const made = await seed(
+			[['1', 'i?']],
+			Array.from({ length: tags }, (_, index) => String(index + 1))
+		);
+		await made.trial({ tag: '12' }, 'negative-motor');
+		await open(page, made, { pxPerMm: 96 / 25.4 });
+		await expect(page.getByText(/read from [12]\.\d m$/)).toBeVisible();
+		await expect(page.getByText('negative motor response')).toBeVisible();
+		await expectNothingOutside(page);
+	});
+}
 
 test('says within 4 s that it is not up to date when the examiner falls silent, and dims', async ({ page }) => {
 	const made = await seed([['1', 'idi']]);

@@ -39,7 +39,7 @@ export function lastTrialLine(state: CaseState): ScreenLine {
 		...line,
 		parts: [
 			part(subject(trial)),
-			...outcome(trial, status).map((text) => part(text, disturbed ? 'ember' : 'ink')),
+			...outcome(trial, status).map((words): Part => ({ ...words, tone: disturbed ? 'ember' : 'ink' })),
 			...(row ? progress(row, last.class) : []).map((words): Part => ({ ...words, tone: 'mute' })),
 			...circumstances(trial, hasSeveralLanguages(state)).map((text) => part(text, 'mute'))
 		]

@@ -3,6 +3,7 @@ import Database from 'better-sqlite3';
 import { spawn, type ChildProcess } from 'node:child_process';
 import { randomUUID } from 'node:crypto';
 import { mkdtempSync, rmSync } from 'node:fs';
+import { createServer, type AddressInfo } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { v7 } from 'uuid';
@@ -19,8 +20,16 @@ export class TestServer {
 	#folder = mkdtempSync(join(tmpdir(), 'wordkeep-'));
 	#process: ChildProcess | undefined;
 
-	constructor(readonly port: number) {
+	private constructor(readonly port: number) {
 		this.origin = `http://localhost:${port}`;
+	}
+
+	/** A server on a port that nobody else has, with its accounts. */
+	static async create(): Promise<TestServer> {
+		const server = new TestServer(await freePort());
+		await server.start();
+		await server.#addAccounts();
+		return server;
 	}
 
 	async start(): Promise<void> {
@@ -50,7 +59,7 @@ export class TestServer {
 		rmSync(this.#folder, { recursive: true });
 	}
 
-	async addAccounts(): Promise<void> {
+	async #addAccounts(): Promise<void> {
 		const passwordHash = await hash(PASSWORD);
 		this.#write((db) => {
 			const insert = db.prepare(
@@ -86,6 +95,14 @@ export class TestServer {
 		work(db);
 		db.close();
 	}
+}
+
+async function freePort(): Promise<number> {
+	const probe = createServer();
+	await new Promise<void>((listening) => probe.listen(0, '127.0.0.1', listening));
+	const { port } = probe.address() as AddressInfo;
+	await new Promise((closed) => probe.close(closed));
+	return port;
 }
 
 /** The examiner's part, played through the API. */

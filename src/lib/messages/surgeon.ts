@@ -20,7 +20,7 @@ export const SURGEON = {
 	testAgain: 'Test again',
 	notScored: 'Not scored',
 	contested: 'Contested',
-	bar: (number: number) => `Bar ${number}`,
+	bar: (number: number, pair: string) => `Bar ${number}: ${pair}`,
 	complete: 'complete',
 	more: (left: number) => `and ${left} more`,
 	evenMore: () => 'and more',
@@ -58,14 +58,17 @@ export function subject({ tag, stimulated }: Pick<Trial, 'tag' | 'stimulated'>):
 }
 
 /** What a trial gave: its kinds, or why it gave nothing yet. */
-export function outcome(trial: Trial, status: 'not-scored' | 'contested' | 'not-counted' | 'scored'): string[] {
-	if (status === 'not-scored') return ['not scored yet'];
-	if (status === 'contested') return ['contested'];
+export function outcome(
+	trial: Trial,
+	status: 'not-scored' | 'contested' | 'not-counted' | 'scored'
+): { text: string; short?: string }[] {
+	if (status === 'not-scored') return [{ text: 'not scored yet', short: 'not scored' }];
+	if (status === 'contested') return [{ text: 'contested' }];
 	const kinds = trial.score ? [trial.score.score, ...(trial.score.also ?? [])] : [];
 	const names = kinds.map((kind) => KIND_NAMES[kind]).join(', ');
-	if (status === 'scored') return [names];
+	if (status === 'scored') return [{ text: names }];
 	const [reason] = trial.excluded;
-	return ['not counted', reason ? reasonName(reason) : names].filter((text) => text !== '');
+	return [{ text: 'not counted' }, { text: reason ? reasonName(reason) : names }];
 }
 
 function reasonName({ why, detail }: ExclusionReason): string {
@@ -95,13 +98,13 @@ export function circumstances(trial: Trial, severalLanguages: boolean): string[]
 	];
 }
 
-/** "2 (1/3)", with the task and class where they are not plain. */
+/** "2 (1/3)", with the class where it is not language, after the task and language where they are given. */
 export function againName(
 	again: { tag: string; class: ResponseClass; disturbed: number; valid: number },
 	pair: string | null
 ): string {
-	const of = [share(again), pair, again.class === 'language' ? null : CLASS_NAMES[again.class]];
-	return `${again.tag} (${of.filter((part) => part !== null).join(' ')})`;
+	const of = again.class === 'language' ? share(again) : `${share(again)} ${CLASS_NAMES[again.class]}`;
+	return `${pair === null ? '' : `${pair}: `}${again.tag} (${of})`;
 }
 
 /** "1 to go: 6, 12"; neighbours are drawn together, and a long list is counted. */
@@ -153,8 +156,9 @@ export function notUpToDate(why: 'server' | 'examiner' | 'waiting', since: numbe
 }
 
 /** The screen is too small for so many numbers at their size: it says how near one has to stand. */
-export function readableFrom(metres: number): string {
-	return `Rings: read from ${decimals.format(metres)} m`;
+export function readableFrom(metres: number): { text: string; short: string } {
+	const from = `read from ${decimals.format(metres)} m`;
+	return { text: `Rings: ${from}`, short: from };
 }
 
 export function caseLine(

@@ -76,10 +76,10 @@ export interface NumberSetting {
 }
 
 /**
- * Advance of the widest bold digit and of a wide capital of Atkinson Hyperlegible, in font sizes (measured in
- * Chromium: "0" 0.652, "M" 0.842).
+ * Advance of a bold tabular digit and of a wide capital of Atkinson Hyperlegible, in font sizes (measured in
+ * Chromium: 0.632, "M" 0.842).
  */
-const DIGIT_ADVANCE = 0.652;
+const DIGIT_ADVANCE = 0.632;
 const CAPITAL_ADVANCE = 0.842;
 
 /** All numbers have one height, so that all read from the same distance; a long one is set narrower. */

@@ -1,7 +1,7 @@
 import type { CaseState, Row, Trial } from '$lib/mapping/case-state';
 import type { TaskLanguage } from '$lib/mapping/events';
 import { rowKey } from '$lib/mapping/rows';
-import { compareTags, sites, tagResults } from '$lib/mapping/sites';
+import { sites, tagResults } from '$lib/mapping/sites';
 import { taskLanguages } from '$lib/mapping/task-languages';
 import { CLASSES, type ResponseClass } from '$lib/mapping/vocabulary';
 
@@ -13,18 +13,21 @@ export interface Again extends TaskLanguage {
 	valid: number;
 }
 
-/** Every negative result of a tag that has a disturbed trial, in the order of the tags. */
+/** Every negative result with a disturbed trial, task by task and language by language, there in the order of the tags. */
 export function toTestAgain(state: CaseState): Again[] {
 	const positive = new Set(
 		tagResults(state)
 			.filter(({ result }) => result === 'positive')
 			.map(({ tag }) => tag)
 	);
+	const pairs = taskLanguages(state);
+	const place = (one: TaskLanguage) => pairs.findIndex((pair) => isSame(pair, one));
 	return CLASSES.flatMap((asked) =>
 		sites(state, asked)
 			.filter((row) => row.verdict === 'negative' && row.disturbed > 0 && !positive.has(row.tag))
+			.sort((a, b) => place(a) - place(b))
 			.map(({ tag, task, language, disturbed, valid }) => ({ tag, task, language, class: asked, disturbed, valid }))
-	).sort((a, b) => compareTags(a.tag, b.tag));
+	);
 }
 
 /** What one task and language still needs: how many trials, at which tags; fewest to go first. */

@@ -39,7 +39,7 @@ export function lastTrialLine(state: CaseState): ScreenLine {
 		...line,
 		parts: [
 			part(subject(trial)),
-			...outcome(trial, status).map((text) => part(text, disturbed ? 'ember' : 'ink')),
+			...outcome(trial, status).map((words): Part => ({ ...words, tone: disturbed ? 'ember' : 'ink' })),
 			...(row ? progress(row, last.class) : []).map((words): Part => ({ ...words, tone: 'mute' })),
 			...circumstances(trial, hasSeveralLanguages(state)).map((text) => part(text, 'mute'))
 		]
@@ -70,25 +70,31 @@ function countsLine(tags: readonly TagView[]): ScreenLine {
 	return {
 		key: 'counts',
 		place: 'top',
-		parts: [
-			part(countName('positive', positive), positive > 0 ? 'ember' : 'mute'),
-			part(countName('negative', negative), 'frost'),
-			part(countName('open', open), 'mute'),
-			...(untested > 0 ? [part(countName('untested', untested), 'mute')] : [])
-		]
+		parts:
+			tags.length === 0
+				? []
+				: [
+						part(countName('positive', positive), positive > 0 ? 'ember' : 'mute'),
+						part(countName('negative', negative), negative > 0 ? 'frost' : 'mute'),
+						part(countName('open', open), 'mute'),
+						...(untested > 0 ? [part(countName('untested', untested), 'mute')] : [])
+					]
 	};
 }
 
+/** The task and language stand once, before the first tag of theirs. */
 function againLine(state: CaseState): ScreenLine {
-	const again = toTestAgain(state);
 	const several = taskLanguages(state).length > 1;
+	const again = toTestAgain(state).map((one) => ({ one, pair: several ? pairText(state, one) : null }));
+	const parts = again.map(({ one, pair }, index): Part => ({
+		text: againName(one, pair === again[index - 1]?.pair ? null : pair),
+		short: againName(one, null),
+		tone: 'ink'
+	}));
 	return {
 		key: 'again',
 		place: 'bottom',
-		parts:
-			again.length === 0
-				? []
-				: [part(SURGEON.testAgain), ...again.map((one) => part(againName(one, several ? pairText(state, one) : null)))],
+		parts: parts.length === 0 ? [] : [part(SURGEON.testAgain), ...parts],
 		more: SURGEON.more
 	};
 }
@@ -117,11 +123,7 @@ function toGoLines(state: CaseState): ScreenLine[] {
 		place: 'bottom',
 		parts:
 			pairs.length > 1
-				? [
-						part(SURGEON.bar(index + 1), 'mute'),
-						part(pairText(state, pair)),
-						...toGoParts(pair, [part(SURGEON.complete, 'mute')])
-					]
+				? [part(SURGEON.bar(index + 1, pairText(state, pair))), ...toGoParts(pair, [part(SURGEON.complete, 'mute')])]
 				: toGoParts(pair, []),
 		more: SURGEON.evenMore
 	}));

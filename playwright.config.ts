@@ -1,0 +1,28 @@
+import { defineConfig } from '@playwright/test';
+
+/** Real Chromium against the production build; every test file starts servers of its own. */
+export default defineConfig({
+	testDir: 'tests/e2e',
+	globalSetup: './tests/api/build.ts',
+	workers: 1,
+	retries: 0,
+	forbidOnly: true,
+	timeout: 60_000,
+	reporter: 'list',
+	use: {
+		browserName: 'chromium',
+		viewport: { width: 1280, height: 800 },
+		launchOptions: {
+			executablePath: process.env.CHROMIUM ?? '/usr/bin/chromium',
+			args: [
+				'--no-sandbox',
+				'--disable-gpu',
+				'--disable-quic',
+				'--no-first-run',
+				'--disable-background-networking',
+				'--disable-component-update',
+				'--disable-sync'
+			]
+		}
+	}
+});

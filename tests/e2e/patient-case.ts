@@ -46,24 +46,31 @@ export class PatientCase {
 		if (confirmed.status !== 200) throw new Error(confirmed.text);
 	}
 
-	/** Opens the patient view by its link, confirms it, and waits until everything is loaded. Gives the view's id. */
+	/**
+	 * Opens the patient view by its link, confirms it, and waits until everything is loaded. Asks the page nothing: a
+	 * question by the test driver counts as a touch for the browser. Gives the view's id.
+	 */
 	async pair(page: Page, origin = this.client.url): Promise<string> {
 		const { id, code } = await this.offer();
 		await page.goto(`${origin}/patient#${code}`);
-		await page.getByText(/The examiner sees \d\d too/).waitFor();
+		while ((await this.waiting())?.state !== 'claimed') await new Promise((done) => setTimeout(done, 50));
 		await this.confirm(id);
-		await page.getByRole('heading', { name: 'Set up the screen' }).waitFor();
-		await this.heard(({ ready, total }) => total !== undefined && ready === total);
+		await this.heard(({ view, ready, total }) => view === id && total !== undefined && ready === total);
 		return id;
+	}
+
+	/** The view that waits for a device or for the examiner's word. */
+	async waiting(): Promise<{ id: string; state: string; checkWord: string | null } | null> {
+		return (await this.client.get(`/api/cases/${this.code}/patient-view`)).body.waiting;
 	}
 
 	async serverNow(): Promise<number> {
 		return (await this.client.get('/api/clock')).body.now;
 	}
 
-	/** Sends a message by the server. */
-	async send(message: WithoutId<DisplayCommand>): Promise<{ listening: number }> {
-		const sent = await this.client.post(`/api/cases/${this.code}/display`, { ...message, id: v7() });
+	/** Sends a message by the server; makes an id where it has none. */
+	async send(message: WithoutId<DisplayCommand> | DisplayCommand): Promise<{ listening: number }> {
+		const sent = await this.client.post(`/api/cases/${this.code}/display`, { id: v7(), ...message });
 		if (sent.status !== 200) throw new Error(sent.text);
 		return sent.body;
 	}

@@ -102,9 +102,10 @@ test.describe('pairing', () => {
 		expect(await violations(page)).toEqual([]);
 		await page.getByLabel('Code').fill(code.toLowerCase().replace('-', ' '));
 		await page.getByRole('button', { name: 'Pair this screen' }).click();
-		const { waiting } = (await examiner.client.get(`/api/cases/${found.code}/patient-view`)).body;
+		await expect(page.getByText(/The examiner sees \d\d too/)).toBeVisible();
+		const waiting = await found.waiting();
 		expect(waiting).toMatchObject({ id, state: 'claimed' });
-		await expect(page.getByText(`The examiner sees ${waiting.checkWord} too`)).toBeVisible();
+		await expect(page.getByText(`The examiner sees ${waiting!.checkWord} too`)).toBeVisible();
 		expect(await violations(page)).toEqual([]);
 		await found.confirm(id);
 		await expect(page.getByRole('heading', { name: 'Set up the screen' })).toBeVisible();
@@ -366,25 +367,64 @@ test.describe('a run', () => {
 		expect(await stage(page).evaluate((element) => getComputedStyle(element).cursor)).toBe('none');
 	});
 
-	test('shows nothing while it is hidden, and says so', async ({ page, context }) => {
+	/** The browser of the tests keeps every page in sight; this is what a page is told when it is covered. */
+	async function setHidden(page: Page, hidden: boolean): Promise<void> {
+		await page.evaluate((value) => {
+			Object.defineProperty(document, 'hidden', { configurable: true, value });
+			Object.defineProperty(document, 'visibilityState', { configurable: true, value: value ? 'hidden' : 'visible' });
+			document.dispatchEvent(new Event('visibilitychange'));
+		}, hidden);
+	}
+
+	test('shows nothing while it is hidden, and says so', async ({ page }) => {
 		const found = await PatientCase.make(examiner.client, pictures());
 		await found.pair(page);
 		await ready(page);
 		await found.show([picture()]);
 		await expect(stage(page).locator('img')).toBeVisible();
-		const seen = await watchStage(page);
-		const devtools = await context.newCDPSession(page);
-		const { windowId } = await devtools.send('Browser.getWindowForTarget');
-		await devtools.send('Browser.setWindowBounds', { windowId, bounds: { windowState: 'minimized' } });
+		const coming = await found.show([picture()], { ahead: 3000 });
+		await setHidden(page, true);
 		await found.heard(({ visible }) => visible === false);
-		expect((await seen()).at(-1)?.items).toBe(0);
+		await expect(stage(page).locator('img')).toHaveCount(0);
+		expect(await found.onset(coming)).toMatchObject({ shown: false, reason: 'hidden' });
 		const hidden = await found.show([picture()]);
 		expect(await found.onset(hidden)).toMatchObject({ shown: false, reason: 'hidden' });
-		await devtools.send('Browser.setWindowBounds', { windowId, bounds: { windowState: 'normal' } });
+		await setHidden(page, false);
 		await found.heard(({ visible }) => visible === true);
 		expect(await colours(page)).toEqual([GROUND]);
 		const again = await found.show([picture()]);
 		expect(await found.onset(again)).toMatchObject({ shown: true });
+	});
+
+	test('shows nothing late after it was asleep', async ({ page, context }) => {
+		const found = await PatientCase.make(examiner.client, pictures());
+		await found.pair(page);
+		await ready(page);
+		const seen = await watchStage(page);
+		const devtools = await context.newCDPSession(page);
+		await devtools.send('Debugger.enable');
+		await devtools.send('Debugger.pause');
+		const asleep = await found.show([picture()]);
+		await new Promise((done) => setTimeout(done, 1500));
+		expect(await found.onsetsOf(asleep)).toEqual([]);
+		await devtools.send('Debugger.resume');
+		expect(await found.onset(asleep)).toMatchObject({ shown: false, reason: 'late' });
+		await page.waitForTimeout(400);
+		expect(await seen()).toEqual([]);
+	});
+
+	test('gives up what no frame was drawn for in time', async ({ page }) => {
+		const found = await PatientCase.make(examiner.client, pictures());
+		await found.pair(page);
+		await ready(page);
+		const seen = await watchStage(page);
+		const trial = await found.show([picture()], { ahead: 600 });
+		await page.waitForTimeout(300);
+		await page.evaluate(() => {
+			for (const end = performance.now() + 1200; performance.now() < end;);
+		});
+		expect(await found.onset(trial)).toMatchObject({ shown: false, reason: 'no-frame' });
+		expect(await seen()).toEqual([]);
 	});
 
 	test('comes back after a reload without a word', async ({ page }) => {
@@ -421,7 +461,7 @@ test.describe('a run', () => {
 });
 
 /** Another window of the same computer, as the examiner's is: it speaks straight to the patient view. */
-async function staffWindow(context: BrowserContext, view: string) {
+async function staffWindow(context: BrowserContext, patient: Page, view: string) {
 	const page = await context.newPage();
 	await page.goto(`${server.url}/sign-in`);
 	await page.evaluate((name) => {
@@ -430,6 +470,7 @@ async function staffWindow(context: BrowserContext, view: string) {
 		channel.onmessage = ({ data }) => data.to === 'staff' && words.push(data.word);
 		Object.assign(window, { channel, words });
 	}, view);
+	await patient.bringToFront();
 	return {
 		page,
 		say: (command: DisplayCommand) =>
@@ -446,7 +487,7 @@ test.describe('two ways to one screen', () => {
 		const found = await PatientCase.make(examiner.client, pictures());
 		const view = await found.pair(page);
 		await ready(page);
-		const staff = await staffWindow(context, view);
+		const staff = await staffWindow(context, page, view);
 		const seen = await watchStage(page);
 		const message = await found.showing([picture()], { duration: 200, ahead: 300 });
 		await staff.say(message);
@@ -467,7 +508,7 @@ test.describe('two ways to one screen', () => {
 		const found = await PatientCase.make(examiner.client, pictures());
 		const view = await found.pair(page);
 		await ready(page);
-		const staff = await staffWindow(context, view);
+		const staff = await staffWindow(context, page, view);
 		const offset = (await found.serverNow()) - Date.now();
 		await server.kill();
 		await page.waitForTimeout(1500);
@@ -519,6 +560,7 @@ test.describe('sound', () => {
 	test('is held back until a real touch, then plays at its time', async ({ page }) => {
 		const found = await PatientCase.make(examiner.client, words());
 		await found.pair(page);
+		await found.heard(({ unlocked }) => unlocked === false);
 		const locked = await found.show([sound()]);
 		expect(await found.onset(locked)).toMatchObject({ shown: false, reason: 'sound-off' });
 		await page.mouse.click(640, 700);
@@ -557,6 +599,7 @@ test.describe('sound', () => {
 		await found.pair(page);
 		await ready(page);
 		await page.reload();
+		await found.heard(({ unlocked, ready: loaded, total }) => unlocked === false && total === 3 && loaded === total);
 		await expect(page.getByText('Touch the screen once')).toBeVisible();
 		await found.show([picture()]);
 		await expect(stage(page).locator('img')).toBeVisible();
@@ -604,7 +647,7 @@ test('nothing that reaches the patient view tells an answer, a score or a tag', 
 	const view = await found.pair(page);
 	await page.getByRole('button', { name: 'Sound and full screen' }).click();
 	await ready(page);
-	const staff = await staffWindow(context, view);
+	const staff = await staffWindow(context, page, view);
 	for (const way of ['server', 'window']) {
 		const message = await found.showing(item.prompts, { ahead: 300 });
 		await found.note('trial-presented', {

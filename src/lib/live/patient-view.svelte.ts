@@ -234,7 +234,9 @@ export class PatientView {
 
 	/** Some browsers let sound through without a touch, for one after a reload. */
 	async #unlockWithoutTouch(): Promise<void> {
-		if (await (await this.#sound).unlock()) this.unlocked = true;
+		const sound = await this.#sound;
+		sound.follow((running) => (this.unlocked = running));
+		this.unlocked = await sound.unlock();
 	}
 
 	async #askWhetherEnded(): Promise<void> {

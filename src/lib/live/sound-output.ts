@@ -42,6 +42,11 @@ export class SoundOutput {
 		return this.running;
 	}
 
+	/** Tells of every change: a call on a phone takes the sound away, for one. */
+	follow(tell: (running: boolean) => void): void {
+		this.#howler.ctx.addEventListener('statechange', () => tell(this.running));
+	}
+
 	async decode(sound: ArrayBuffer): Promise<AudioBuffer> {
 		return await this.#howler.ctx.decodeAudioData(sound);
 	}

@@ -19,7 +19,11 @@ afterEach(async () => {
 /** Opens the stream of a case; answers with what gives all it has sent so far, or null once it has ended. */
 async function open(headers: Record<string, string> = {}, query = ''): Promise<() => Promise<string | null>> {
 	const url = new URL(`http://localhost/api/cases/${CODE}/stream${query}`);
-	const event = { locals: { case: { code: CODE } }, url, request: new Request(url, { headers }) };
+	const event = {
+		locals: { case: { code: CODE }, account: { id: 'surgeon' } },
+		url,
+		request: new Request(url, { headers })
+	};
 	const response = await GET(event as unknown as Parameters<typeof GET>[0]);
 	const reader = (response.body as ReadableStream<Uint8Array>).getReader();
 	readers.push(reader);

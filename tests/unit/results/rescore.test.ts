@@ -111,6 +111,13 @@ describe('a rescored file', () => {
 		]);
 	});
 
+	it('takes a contested trial for none even where somebody has filled in a score', () => {
+		const text = changed(exported(trials(['anomia', 'intact', 'intact'])), 'contested', 'true', 2);
+		const { results, differing } = rescore(text);
+		expect(results[0]).toMatchObject({ disturbed: 0, valid: 2, verdict: 'open' });
+		expect(differing).toEqual([{ line: 2, exported: 'disturbed', found: 'pending' }]);
+	});
+
 	it('has no row for a baseline, a control, a trial without an item, or a run that was never opened', () => {
 		const base = { task: 'object-naming', language: 'en', milliamps: null };
 		const text = exported([

@@ -53,6 +53,11 @@ describe('the export of sites', () => {
 		expect(column(rows, 'fisher_bh', 6)).toEqual([0.001905, 0.021314, 0.21502, 1, 0.021314]);
 	});
 
+	it('does not find a site that errs less than the controls', () => {
+		// By hand: all 20 tables of three and three are at least as disturbed; two-sided it would be 2/20.
+		expect(column(rowsOf([...scored(3, 3, null), ...scored(0, 3, '1')]), 'fisher_p', 6)).toEqual([1]);
+	});
+
 	// By hand, p = 4/80 = 1/20: 1/8000, 58/8000 and 1141/8000 of three, of two or more, of one or more.
 	it('has the chance of as many errors at the rate of the controls', () => {
 		expect(column(rowsOf(five), 'binomial_p', 6)).toEqual([0.000125, 0.00725, 0.142625, 1, 0.00725]);

@@ -36,6 +36,16 @@ describe('words on a line', () => {
 		expect(shown(line(['aaa', 'bbb', 'ccc', 'ddd', 'eee']), 2, 70)).toEqual(['aaa', 'bbb', 'ccc', 'ddd']);
 	});
 
+	it('count the gap between two parts', () => {
+		expect(shown(line(['aaa', 'bbb']), 2, 65)).toEqual(['aaa', 'bbb']);
+		expect(shown(line(['aaa', 'bbb']), 1, 65)).toEqual(['aaa']);
+	});
+
+	it('are broken where one alone is wider than the room', () => {
+		expect(shown(line(['a', 'bbbb ccc dd']), 3, 60)).toEqual(['a', 'bbbb', 'ccc', 'dd']);
+		expect(shown(line(['a', 'bbbb ccc dd']), 1, 60)).toEqual(['a', 'bbbb']);
+	});
+
 	it('keep the first part, however narrow the screen', () => {
 		expect(shown(line(['aaaaaa', 'b']), 1, 20)).toEqual(['aaaaaa']);
 	});

@@ -30,11 +30,12 @@ export interface Fitted {
 
 /**
  * Sets a line into at most `most` lines of the room: in full, else in short words, else without its last parts. Words
- * are never set smaller. The first part always stands.
+ * are never set smaller. The first part always stands; one that is wider than the room is broken into its words.
  */
 export function fitLine(line: Line, most: number, room: Room): Fitted {
-	const short = line.parts.map(({ short, ...part }) => ({ ...part, text: short ?? part.text }));
-	if (fits(line.parts, most, room)) return { parts: line.parts, left: 0 };
+	const full = line.parts.flatMap((part) => broken(part, room));
+	if (fits(full, most, room)) return { parts: full, left: 0 };
+	const short = line.parts.flatMap(({ short, ...part }) => broken({ ...part, text: short ?? part.text }, room));
 	for (let shown = short.length; shown > 1; shown--) {
 		const left = short.length - shown;
 		const parts = [...short.slice(0, shown), ...moreOf(line, left)];
@@ -43,6 +44,11 @@ export function fitLine(line: Line, most: number, room: Room): Fitted {
 	const left = short.length - 1;
 	const withMore = [...short.slice(0, 1), ...moreOf(line, left)];
 	return { parts: fits(withMore, most, room) ? withMore : short.slice(0, 1), left };
+}
+
+function broken(part: Part, { width, measure }: Room): Part[] {
+	if (measure(part) <= width) return [part];
+	return part.text.split(' ').map((text) => ({ text, tone: part.tone }));
 }
 
 function moreOf({ more }: Line, left: number): Part[] {

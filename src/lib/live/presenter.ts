@@ -107,7 +107,7 @@ export class Presenter {
 		if (passed > 3 && passed < 50) this.#interval += (passed - this.#interval) / 10;
 		this.lastFrame = stamp;
 		try {
-			this.#step({ stamp, interval: this.#interval, latency: median(this.#latencies) });
+			this.#step({ stamp, interval: this.#interval, latency: median(this.#latencies) ?? this.#interval / 2 });
 		} catch (failure) {
 			this.giveUp('fault');
 			console.error(failure);
@@ -188,6 +188,6 @@ export class Presenter {
 	};
 }
 
-function median(values: readonly number[]): number {
-	return values.toSorted((a, b) => a - b)[values.length >> 1] ?? 0;
+function median(values: readonly number[]): number | undefined {
+	return values.toSorted((a, b) => a - b)[values.length >> 1];
 }

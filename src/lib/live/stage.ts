@@ -21,6 +21,8 @@ export function layoutStyle(layout: Layout, side: number): string {
 	].join(';');
 }
 
+/** Letters beside a picture leave it the room: at most this part of the side. */
+const LETTERS_BESIDE = 10;
 const ITEM_STYLE = 'display:grid;place-items:center;place-content:center;grid-template-columns:minmax(0,1fr);gap:4%';
 const PICTURE_STYLE = 'width:100%;height:100%;min-height:0;object-fit:contain';
 const TEXT_STYLE = 'margin:0;text-align:center;text-wrap:balance;overflow-wrap:anywhere;line-height:1.25;color:#14191a';
@@ -49,8 +51,10 @@ export class Stage {
 		// A picture takes the room that text leaves.
 		const rows = visible.map((one) => (one instanceof HTMLImageElement ? 'minmax(0,1fr)' : 'auto')).join(' ');
 		element.style.cssText = `${layoutStyle(this.#layout, side)};${ITEM_STYLE};grid-template-rows:${rows}`;
+		const beside = visible.length > 1 ? side / LETTERS_BESIDE : Infinity;
 		for (const one of visible) {
-			if (one instanceof HTMLParagraphElement) one.style.fontSize = `${letterSize(one.textContent, side)}px`;
+			if (!(one instanceof HTMLParagraphElement)) continue;
+			one.style.fontSize = `${Math.min(beside, letterSize(one.textContent, side))}px`;
 		}
 	}
 

@@ -42,9 +42,18 @@ function answerOf(trial: Trial): RoundAnswer {
 	return scores.every((score) => score === 'intact') ? 'right' : 'wrong';
 }
 
-/** The baseline rounds of the case: its runs of that purpose, in the order they were opened. */
+/**
+ * The baseline rounds of the case: its runs of that purpose, in the order they were opened. One that was closed before
+ * its first item was shown is none.
+ */
 export function baselineRounds(state: CaseState): string[] {
-	return [...state.runs.values()].filter(({ purpose }) => purpose === 'baseline').map(({ run }) => run);
+	return [...state.runs.values()]
+		.filter(({ run, purpose, open }) => purpose === 'baseline' && (open || hasTrials(state, run)))
+		.map(({ run }) => run);
+}
+
+function hasTrials(state: CaseState, run: string): boolean {
+	return [...(state.trialsOfRun.get(run) ?? [])].some((trial) => state.trials.has(trial));
 }
 
 /** Every item of the case with its record, in the order the items were copied. */

@@ -108,6 +108,13 @@ test('a withdrawn score leaves the item to be scored; without an answer there is
 	expect(baselineRate(items)).toBeNull();
 });
 
+test('a round that was closed before its first item is none', () => {
+	const log = prepared();
+	log.note('run-closed', { run: 'one' });
+	log.note('run-opened', { run: 'two', purpose: 'baseline' });
+	expect(baselineRounds(fold(log.events))).toEqual(['two']);
+});
+
 test('an answer that counts is not given up for a later one in the same round', () => {
 	const log = prepared();
 	log.answer('one', 'anchor', 'not-scorable');

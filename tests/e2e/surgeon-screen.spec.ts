@@ -36,7 +36,10 @@ async function open(page: Page, { code }: TestCase, screen = { pxPerMm: PX_PER_M
 		data: { email: server.surgeon.email, password: PASSWORD }
 	});
 	expect(signedIn.ok()).toBe(true);
-	await page.addInitScript((kept) => localStorage.setItem('wordkeep-screen', JSON.stringify(kept)), screen);
+	await page.addInitScript(({ pxPerMm }) => {
+		const sides = [window.screen.width, window.screen.height].sort((a, b) => a - b);
+		localStorage.setItem(`wordkeep-screen-${sides.join('x')}`, JSON.stringify({ pixelsPerMm: pxPerMm }));
+	}, screen);
 	await page.goto(`${server.origin}/cases/${code}/surgeon`);
 	await expect(page.getByRole('main')).toBeVisible();
 }

@@ -1,6 +1,5 @@
 import type { EventData } from '$lib/mapping/events';
 import type { DisplayCommand, Layout, PatientPresence } from '$lib/stimuli/display';
-import { applyScale, measuredScale, saveScale, screenScale } from '$lib/stimuli/screen-scale';
 import { followStream } from './case-stream';
 import { deviceName } from './device';
 import { keepLayout, keptLayout } from './kept-layout';
@@ -10,6 +9,7 @@ import { Outbox } from './outbox.svelte';
 import { askPairing } from './pairing.svelte';
 import { patientChannel, type ChannelMessage, type PatientWord } from './patient-channel';
 import { Presenter } from './presenter';
+import { applyScale, keepScreen, readScreen } from './screen';
 import { ScreenHold } from './screen-hold.svelte';
 import { SeenMessages } from './seen-messages';
 import { ServerClock } from './server-clock.svelte';
@@ -30,8 +30,8 @@ export class PatientView {
 	readonly view: string;
 	layout = $state.raw<Layout>(keptLayout());
 	/** CSS pixels per millimetre */
-	scale = $state(screenScale());
-	calibrated = $state(measuredScale() !== null);
+	scale = $state(readScreen().pxPerMm);
+	calibrated = $state(readScreen().calibrated);
 	/** the set-up is over, or an item came before it was: nothing is on the screen but items */
 	running = $state(false);
 	/** sound and full screen were unlocked by a touch, or the browser needed none */
@@ -151,7 +151,7 @@ export class PatientView {
 
 	/** @param pxPerMm CSS pixels, measured with a card */
 	calibrate(pxPerMm: number): void {
-		saveScale(pxPerMm);
+		keepScreen({ pxPerMm });
 		this.scale = pxPerMm;
 		this.calibrated = true;
 		this.#stage?.fit();

@@ -1,6 +1,8 @@
-/** What this screen is: its scale, by a card held against it, and how far away its reader stands. */
+import { ASSUMED_PX_PER_MM } from '$lib/stimuli/item-size';
+
+/** What is known of this screen: its scale, by a card laid on it, and how far away its reader is. */
 export interface Screen {
-	/** CSS pixels a millimetre */
+	/** CSS pixels a millimetre; what browsers assume where nobody measured */
 	pxPerMm: number;
 	/** from the reader's eyes, in millimetres; null where nobody said */
 	distanceMm: number | null;
@@ -8,41 +10,55 @@ export interface Screen {
 	calibrated: boolean;
 }
 
-const KEY = 'wordkeep-screen';
-/** CSS Values and Units: 96 px are one inch of 25.4 mm where nothing else is known. */
-const CSS_PX_PER_MM = 96 / 25.4;
+interface Kept {
+	/** the screen's own pixels a millimetre, so that a measure outlasts a change of zoom */
+	pixelsPerMm?: number;
+	distanceMm?: number;
+}
 
-/** What is known of this screen; without a measurement, the scale that CSS assumes. */
+/** Names a screen by its own pixels, however it is turned and zoomed: another screen needs a measure of its own. */
+function storageKey(): string {
+	const sides = [screen.width, screen.height].map((side) => Math.round(side * devicePixelRatio));
+	return `wordkeep-screen-${sides.sort((a, b) => a - b).join('x')}`;
+}
+
 export function readScreen(): Screen {
-	const kept = readKept();
+	const { pixelsPerMm, distanceMm } = readKept();
 	return {
-		pxPerMm: kept.pxPerMm ?? CSS_PX_PER_MM,
-		distanceMm: kept.distanceMm ?? null,
-		calibrated: kept.pxPerMm !== undefined
+		pxPerMm: pixelsPerMm === undefined ? ASSUMED_PX_PER_MM : pixelsPerMm / devicePixelRatio,
+		distanceMm: distanceMm ?? null,
+		calibrated: pixelsPerMm !== undefined
 	};
 }
 
-/** CSS pixels a millimetre on this screen. */
-export function pxPerMm(): number {
-	return readScreen().pxPerMm;
-}
-
 /** Keeps what was found out about this screen; what is not given stays as it was. */
-export function keepScreen(change: { pxPerMm?: number; distanceMm?: number }): void {
-	localStorage.setItem(KEY, JSON.stringify({ ...readKept(), ...change }));
+export function keepScreen({ pxPerMm, distanceMm }: { pxPerMm?: number; distanceMm?: number }): void {
+	const kept: Kept = {
+		...readKept(),
+		...(pxPerMm === undefined ? {} : { pixelsPerMm: pxPerMm * devicePixelRatio }),
+		...(distanceMm === undefined ? {} : { distanceMm })
+	};
+	localStorage.setItem(storageKey(), JSON.stringify(kept));
+	applyScale();
 }
 
-function readKept(): { pxPerMm?: number; distanceMm?: number } {
+/** Gives style sheets a millimetre of this screen, `--mm`, once it was measured. */
+export function applyScale(): void {
+	const { calibrated, pxPerMm } = readScreen();
+	if (calibrated) document.documentElement.style.setProperty('--mm', `${pxPerMm}px`);
+}
+
+function readKept(): Kept {
 	try {
-		const kept = JSON.parse(localStorage.getItem(KEY) ?? '{}') as Record<string, unknown>;
-		return { ...positive(kept, 'pxPerMm'), ...positive(kept, 'distanceMm') };
+		const kept = JSON.parse(localStorage.getItem(storageKey()) ?? '{}') as Record<string, unknown>;
+		return { ...positive(kept, 'pixelsPerMm'), ...positive(kept, 'distanceMm') };
 	} catch {
 		// What cannot be read is as good as nothing kept.
 		return {};
 	}
 }
 
-function positive(kept: Record<string, unknown>, name: string): Record<string, number> {
+function positive(kept: Record<string, unknown>, name: keyof Kept): Kept {
 	const value = kept[name];
 	return typeof value === 'number' && Number.isFinite(value) && value > 0 ? { [name]: value } : {};
 }

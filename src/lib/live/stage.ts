@@ -1,10 +1,10 @@
 import type { DisplayPrompt, Layout } from '$lib/stimuli/display';
 import { itemSide, letterSize, offsetOf } from '$lib/stimuli/item-size';
-import { screenScale } from '$lib/stimuli/screen-scale';
+import { readScreen } from './screen';
 
 /** Side in CSS pixels of an item on this screen. */
 export function sideOnScreen(layout: Layout): number {
-	return itemSide(layout, screenScale(), { width: innerWidth, height: innerHeight });
+	return itemSide(layout, readScreen().pxPerMm, { width: innerWidth, height: innerHeight });
 }
 
 /**

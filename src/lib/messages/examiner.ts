@@ -122,6 +122,7 @@ export const EXAMINER = {
 	afterdischargeTitle: (since: string) => `Afterdischarge, ${since} ago`,
 	commands: 'at any moment',
 	keys: 'keys',
+	measure: 'measure this screen',
 	keysTitle: 'Change keys',
 	keysHint: 'Choose a line, then press the new key. Letters go by what is printed on them.',
 	keysReset: 'as delivered',

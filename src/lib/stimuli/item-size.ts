@@ -1,6 +1,9 @@
 /** CSS pixels per millimetre on a screen that was not calibrated: 96 to the inch (CSS Values and Units 4, section 5.2). */
 export const ASSUMED_PX_PER_MM = 96 / 25.4;
 
+/** A card of the size ID-1, as bank and identity cards have it (ISO/IEC 7810), in millimetres. */
+export const CARD = { width: 85.6, height: 53.98 };
+
 /**
  * How long something is that is seen under an angle: 2 d tan(angle / 2).
  *

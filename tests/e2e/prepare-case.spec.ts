@@ -105,7 +105,7 @@ test('a new case, its protocol, two item sets and six tags', async ({ page }) =>
 
 	// Items: sets of the languages of the case are offered, and Austrian German can use German ones.
 	await openPart(page, 'Items');
-	for (const set of ['Objects, English', 'Objects, German']) {
+	for (const set of ['Objects, English', 'Gegenstände, Deutsch']) {
 		await page.getByRole('button', { name: `Add ${set}` }).click();
 		await expect(page.getByText(`items added from ${set}`)).toBeVisible();
 	}
@@ -282,7 +282,7 @@ test('a baseline round by hand: each item by one key, the rule proposes, the the
 	await page.getByRole('button', { name: 'Add Objects, English' }).click();
 	await page.getByRole('link', { name: 'Try them in a baseline round' }).click();
 	await page.getByRole('button', { name: 'Begin round 1' }).click();
-	const item = page.getByRole('heading', { level: 2 }).first();
+	const item = page.getByRole('region', { name: 'Baseline, round 1' }).getByRole('heading', { level: 2 });
 	const next = async (key: string) => {
 		const before = await item.textContent();
 		await page.keyboard.press(key);

@@ -169,9 +169,9 @@ test.describe('set-up', () => {
 	test('loads everything ahead, plays a word at a touch, and tells the examiner', async ({ page }) => {
 		const found = await PatientCase.make(examiner.client, [...pictures(), ...words()]);
 		await found.pair(page);
+		await found.heard(({ unlocked, fullScreen }) => unlocked === false && fullScreen === false);
 		await expect(page.getByText('3 of 3 pictures and sounds ready')).toBeVisible();
 		expect(await violations(page)).toEqual([]);
-		await found.heard(({ unlocked, fullScreen }) => unlocked === false && fullScreen === false);
 		await page.getByRole('button', { name: 'Sound and full screen' }).click();
 		await expect(page.getByText('A word was played.')).toBeVisible();
 		const told = await found.heard(({ unlocked, fullScreen }) => unlocked === true && fullScreen === true);

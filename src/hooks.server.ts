@@ -9,6 +9,7 @@ import {
 } from '@sveltejs/kit';
 import { sequence } from '@sveltejs/kit/hooks';
 import { randomUUID } from 'node:crypto';
+import { REFUSALS } from '$lib/messages/refusals';
 import { offerSetUp } from '$lib/server/accounts/invitations';
 import { readSession } from '$lib/server/accounts/sessions';
 import { caseByCode } from '$lib/server/cases/cases';
@@ -50,10 +51,7 @@ const secureHeaders: Handle = async ({ event, resolve }) => {
 const sameOrigin: Handle = async ({ event, resolve }) => {
 	const origin = event.request.headers.get('origin');
 	if (!SAFE.has(event.request.method) && origin !== null && origin !== event.url.origin) {
-		return json(
-			{ error: 'This request came from another site and was refused. Nothing was changed.' },
-			{ status: 403 }
-		);
+		return json({ error: REFUSALS.otherSite }, { status: 403 });
 	}
 	return await resolve(event);
 };
@@ -83,10 +81,10 @@ const permit: Handle = async ({ event, resolve }) => {
 	return decision === 'allowed' ? await resolve(event) : refuse(event, decision);
 };
 
-const REFUSALS: Record<Exclude<Decision, 'allowed'>, { status: number; reason: string }> = {
-	'sign-in-first': { status: 401, reason: 'Sign in first.' },
-	forbidden: { status: 403, reason: 'Your role does not allow this.' },
-	'not-found': { status: 404, reason: 'There is no such case, or you are not on its team.' }
+const ANSWERS: Record<Exclude<Decision, 'allowed'>, { status: number; reason: string }> = {
+	'sign-in-first': { status: 401, reason: REFUSALS.signInFirst },
+	forbidden: { status: 403, reason: REFUSALS.roleForbids },
+	'not-found': { status: 404, reason: REFUSALS.noCase }
 };
 
 function refuse(event: RequestEvent, decision: Exclude<Decision, 'allowed'>): Response {
@@ -94,7 +92,7 @@ function refuse(event: RequestEvent, decision: Exclude<Decision, 'allowed'>): Re
 	if (isPage && decision === 'sign-in-first') {
 		redirect(303, `/sign-in?to=${encodeURIComponent(event.url.pathname + event.url.search)}`);
 	}
-	const { status, reason } = REFUSALS[decision];
+	const { status, reason } = ANSWERS[decision];
 	if (isPage) error(status, reason);
 	return json({ error: reason }, { status });
 }
@@ -106,7 +104,7 @@ export const handleError: HandleServerError = ({ error, event, status, message }
 	if (status === 404) return { message };
 	const id = randomUUID();
 	console.error(JSON.stringify({ at: new Date().toISOString(), id, route: event.route.id, status }), error);
-	return { message: 'Something went wrong on the server. What you had saved is kept.', id };
+	return { message: REFUSALS.failure, id };
 };
 
 // The adapter stops listening but leaves the process to end by itself: close what keeps it alive.

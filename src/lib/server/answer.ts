@@ -1,5 +1,6 @@
 import { json } from '@sveltejs/kit';
 import type { z } from 'zod';
+import { REFUSALS } from '$lib/messages/refusals';
 
 /** An answer that says what was wrong, in the form every API route uses. */
 export function refusal(status: number, error: string, more: Record<string, unknown> = {}): Response {
@@ -14,7 +15,7 @@ export async function readJson<S extends z.ZodType>(request: Request, schema: S)
 	try {
 		given = await request.json();
 	} catch {
-		return { ok: false, response: refusal(400, 'The request is not JSON. Nothing was changed.') };
+		return { ok: false, response: refusal(400, REFUSALS.notJson) };
 	}
 	const parsed = schema.safeParse(given);
 	if (parsed.success) return { ok: true, value: parsed.data };

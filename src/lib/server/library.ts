@@ -1,12 +1,13 @@
 import { readFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import type { Catalogue, CatalogueSet } from '$lib/stimuli/catalogue';
+import { REFUSALS } from '$lib/messages/refusals';
 import { mediaFolder } from './media/serve-file';
 
 /** The item sets were not built on this machine. */
 export class LibraryMissing extends Error {
 	constructor() {
-		super('The item sets are not built on this server yet. Run: npm run media');
+		super(REFUSALS.noLibrary);
 	}
 }
 

@@ -1,4 +1,5 @@
 import type { AnyCaseEvent } from '$lib/mapping/events';
+import { REFUSALS } from '$lib/messages/refusals';
 import { refusal, type Body } from '../answer';
 import { faultOf } from './event-schema';
 
@@ -17,9 +18,9 @@ export async function readAppend(
 	const bytes = await bytesOf(request);
 	if (bytes === null) return refused(tooMuch());
 	const body = bodyIn(bytes);
-	if (body === undefined) return refused(refusal(400, 'The request is not JSON. Nothing was stored.'));
+	if (body === undefined) return refused(refusal(400, REFUSALS.notJsonStored));
 	const events = (body as { events?: unknown } | null)?.events;
-	if (!Array.isArray(events)) return refused(refusal(422, 'events: a list of entries. Nothing was stored.'));
+	if (!Array.isArray(events)) return refused(refusal(422, REFUSALS.notAList));
 	if (events.length > MOST_EVENTS) return refused(tooMuch());
 	for (const [index, event] of events.entries()) {
 		const fault = faultOf(event) ?? also(event as AnyCaseEvent);
@@ -33,7 +34,7 @@ function refused(response: Response): { ok: false; response: Response } {
 }
 
 function tooMuch(): Response {
-	return refusal(413, `At most ${MOST_EVENTS} entries and ${MOST_BYTES / 1024} KiB at once: send it in parts.`);
+	return refusal(413, REFUSALS.tooMuch(MOST_EVENTS, MOST_BYTES / 1024));
 }
 
 /**

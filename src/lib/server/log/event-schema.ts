@@ -6,7 +6,8 @@ import { malformedIn } from './well-formed';
 /** What the log accepts: every released type and version, each with all of its fields. Unknown ones are refused. */
 
 const uuid = z.guid();
-const instant = z.iso.datetime({ offset: true });
+/** RFC 3339: ISO 8601 with seconds and an offset. */
+const instant = z.iso.datetime({ offset: true }).regex(/T\d{2}:\d{2}:\d{2}/, 'a time has seconds and an offset');
 const tag = z.string().regex(TAG_PATTERN, 'a tag is one to three digits or capital letters and does not begin with 0');
 const word = z
 	.string()

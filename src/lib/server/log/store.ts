@@ -1,5 +1,6 @@
 import { json } from '@sveltejs/kit';
 import type { AnyCaseEvent } from '$lib/mapping/events';
+import { REFUSALS } from '$lib/messages/refusals';
 import { refusal } from '../answer';
 import { append, IdTaken } from './log';
 
@@ -9,7 +10,7 @@ export async function store(code: string, sender: string, events: AnyCaseEvent[]
 		return json({ stored: await append(code, sender, events) });
 	} catch (failure) {
 		if (!(failure instanceof IdTaken)) throw failure;
-		return refusal(409, 'This id stands in the case log with other content. Nothing was stored.', {
+		return refusal(409, REFUSALS.idTaken, {
 			index: failure.index,
 			id: failure.id
 		});

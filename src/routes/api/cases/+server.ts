@@ -1,6 +1,7 @@
 import { json } from '@sveltejs/kit';
 import { z } from 'zod';
 import { HEMISPHERES } from '$lib/mapping/vocabulary';
+import { REFUSALS } from '$lib/messages/refusals';
 import { readJson, refusal } from '$lib/server/answer';
 import { createCase, isOnTeam, listCases, UnknownAccount, type Case } from '$lib/server/cases/cases';
 import { caseFields } from '$lib/server/cases/case-schema';
@@ -32,7 +33,7 @@ export const POST: RequestHandler = async ({ request, locals }) => {
 	try {
 		return json(await createCase(body.value, locals.account!), { status: 201 });
 	} catch (failure) {
-		if (failure instanceof UnknownAccount) return refusal(422, `team: ${failure.message}`, { fields: ['team'] });
+		if (failure instanceof UnknownAccount) return refusal(422, REFUSALS.team(failure.message), { fields: ['team'] });
 		throw failure;
 	}
 };

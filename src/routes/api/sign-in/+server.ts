@@ -1,5 +1,6 @@
 import { json } from '@sveltejs/kit';
 import { z } from 'zod';
+import { REFUSALS } from '$lib/messages/refusals';
 import { startSession } from '$lib/server/accounts/sessions';
 import { signIn } from '$lib/server/accounts/sign-in';
 import { readJson, refusal } from '$lib/server/answer';
@@ -12,9 +13,9 @@ export const POST: RequestHandler = async ({ request, cookies, url, getClientAdd
 	if (!body.ok) return body.response;
 	const result = await signIn(body.value.email, body.value.password, getClientAddress());
 	if (!result.ok && result.why === 'wait') {
-		return refusal(429, `Too many wrong passwords. Try again in ${result.seconds} s.`, { seconds: result.seconds });
+		return refusal(429, REFUSALS.waitToSignIn(result.seconds), { seconds: result.seconds });
 	}
-	if (!result.ok) return refusal(401, 'The e-mail address or the password is wrong.');
+	if (!result.ok) return refusal(401, REFUSALS.wrongSignIn);
 	await startSession(cookies, url, result.account);
 	const { id, email, name, roles } = result.account;
 	return json({ account: { id, email, name, roles } });

@@ -1,6 +1,7 @@
 import { json } from '@sveltejs/kit';
 import { RateLimiterMemory } from 'rate-limiter-flexible';
 import { z } from 'zod';
+import { REFUSALS } from '$lib/messages/refusals';
 import { readJson, refusal } from '$lib/server/answer';
 import { hub, staffRoom } from '$lib/server/live/hub';
 import { writePatientToken } from '$lib/server/live/patient-cookie';
@@ -25,12 +26,12 @@ export const POST: RequestHandler = async ({ request, cookies, url, getClientAdd
 	const from = getClientAddress();
 	const wrong = await tries.get(from);
 	if (wrong && wrong.remainingPoints <= 0) {
-		return refusal(429, `Five wrong codes. Wait ${Math.ceil(wrong.msBeforeNext / 60_000)} min and ask for a new code.`);
+		return refusal(429, REFUSALS.tooManyCodes(Math.ceil(wrong.msBeforeNext / 60_000)));
 	}
 	const claimed = await claimPatientView(body.value.code);
 	if (!claimed) {
 		await tries.penalty(from);
-		return refusal(404, 'This code does not fit, was used, or is too old. Ask the examiner for a new one.');
+		return refusal(404, REFUSALS.wrongCode);
 	}
 	await tries.delete(from);
 	writePatientToken(cookies, url, claimed.token);

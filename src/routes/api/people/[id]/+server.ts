@@ -1,5 +1,6 @@
 import { json } from '@sveltejs/kit';
 import { z } from 'zod';
+import { REFUSALS } from '$lib/messages/refusals';
 import { accountFields } from '$lib/server/accounts/account-schema';
 import { changeAccount } from '$lib/server/accounts/accounts';
 import { readJson, refusal } from '$lib/server/answer';
@@ -13,9 +14,9 @@ export const PATCH: RequestHandler = async ({ request, params }) => {
 	const body = await readJson(request, schema);
 	if (!body.ok) return body.response;
 	const changed = await changeAccount(params.id, body.value);
-	if (changed === null) return refusal(404, 'There is no such account.');
+	if (changed === null) return refusal(404, REFUSALS.noAccount);
 	if (changed === 'last-administrator') {
-		return refusal(409, 'This is the last administrator who can sign in. Make another one first.');
+		return refusal(409, REFUSALS.lastAdministrator);
 	}
 	return json(changed);
 };

@@ -1,5 +1,6 @@
 import { json } from '@sveltejs/kit';
 import { z } from 'zod';
+import { REFUSALS } from '$lib/messages/refusals';
 import { readJson, refusal } from '$lib/server/answer';
 import { addressesFor } from '$lib/server/live/addresses';
 import { hub, patientRoom, staffRoom } from '$lib/server/live/hub';
@@ -29,7 +30,7 @@ export const PUT: RequestHandler = async ({ request, locals }) => {
 	const body = await readJson(request, confirmation);
 	if (!body.ok) return body.response;
 	const confirmed = await confirmPatientView(locals.case.code, body.value.id);
-	if (!confirmed) return refusal(409, 'That device does not wait any more. Offer a new code.');
+	if (!confirmed) return refusal(409, REFUSALS.deviceGone);
 	confirmed.replaced.forEach(tellEnded);
 	tellStaff(locals.case.code);
 	return json(confirmed.view);

@@ -1,5 +1,6 @@
 import { json } from '@sveltejs/kit';
 import { z } from 'zod';
+import { REFUSALS } from '$lib/messages/refusals';
 import { readJson, refusal } from '$lib/server/answer';
 import { caseByCode, setTeam, UnknownAccount } from '$lib/server/cases/cases';
 import { endStreamsOf } from '$lib/server/live/access';
@@ -13,7 +14,7 @@ export const PUT: RequestHandler = async ({ request, locals }) => {
 	try {
 		await setTeam(locals.case.code, body.value.team);
 	} catch (failure) {
-		if (failure instanceof UnknownAccount) return refusal(422, `team: ${failure.message}`, { fields: ['team'] });
+		if (failure instanceof UnknownAccount) return refusal(422, REFUSALS.team(failure.message), { fields: ['team'] });
 		throw failure;
 	}
 	const { code, team } = (await caseByCode(locals.case.code))!;

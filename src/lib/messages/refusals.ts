@@ -1,0 +1,30 @@
+/** What the server says when it refuses something: what happened, what was kept, what to do. */
+export const REFUSALS = {
+	signInFirst: 'Sign in first.',
+	roleForbids: 'Your role does not allow this.',
+	noCase: 'There is no such case, or you are not on its team.',
+	otherSite: 'This request came from another site and was refused. Nothing was changed.',
+	failure: 'Something went wrong on the server. What you had saved is kept.',
+	wrongSignIn: 'The e-mail address or the password is wrong.',
+	waitToSignIn: (seconds: number) => `Too many wrong passwords. Try again in ${seconds} s.`,
+	noAccount: 'There is no such account.',
+	disabledAccount: 'This account is disabled. Enable it first.',
+	lastAdministrator: 'This is the last administrator who can sign in. Make another one first.',
+	knownAddress: 'This e-mail address has an account already.',
+	noView: 'No patient view is paired with this case.',
+	deviceGone: 'That device does not wait any more. Offer a new code.',
+	wrongCode: 'This code does not fit, was used, or is too old. Ask the examiner for a new one.',
+	tooManyCodes: (minutes: number) => `Five wrong codes. Wait ${minutes} min and ask for a new code.`,
+	noSet: (id: string) => `There is no item set ${id}.`,
+	noLibrary: 'The item sets are not built on this server yet. Run: npm run media',
+	noMedia: 'There is no such picture or sound.',
+	notJson: 'The request is not JSON. Nothing was changed.',
+	notJsonStored: 'The request is not JSON. Nothing was stored.',
+	notAList: 'events: a list of entries. Nothing was stored.',
+	tooMuch: (entries: number, kibibytes: number) =>
+		`At most ${entries} entries and ${kibibytes} KiB at once: send it in parts.`,
+	idTaken: 'This id stands in the case log with other content. Nothing was stored.',
+	position: 'after: a position in the case log, a whole number from 0',
+	oneOf: (field: string, values: readonly string[]) => `${field}: one of ${values.join(', ')}`,
+	team: (what: string) => `team: ${what}`
+};

@@ -66,7 +66,12 @@ export class Conductor {
 		const chosen = this.selected === null ? undefined : this.live.state.trials.get(this.selected);
 		if (chosen) return chosen;
 		const newest = this.trials.at(-1);
-		return newest?.effect.language === 'pending' ? newest : null;
+		return newest && this.#waits(newest) ? newest : null;
+	}
+
+	/** An item shown during a pause does not count, but it is before the patient's eyes all the same. */
+	#waits({ effect, score, excluded }: Trial): boolean {
+		return effect.language === 'pending' || (score === null && excluded.every(({ why }) => why === 'pause'));
 	}
 
 	get canRedo(): boolean {
@@ -188,7 +193,8 @@ export class Conductor {
 		const [withdrawal] = await this.live.note(['entry-withdrawn', { entry: last.event.id }]);
 		this.#takenBack = [...this.#takenBack, withdrawal!.id];
 		if (last.event.type === 'trial-scored') {
-			this.selected = last.event.data.trial;
+			const { trial } = last.event.data;
+			this.selected = trial === this.trials.at(-1)?.id ? null : trial;
 			return 'score';
 		}
 		this.selected = null;

@@ -8,8 +8,8 @@ import { compareTags } from '$lib/mapping/sites';
 import type { ErrorKind, Score } from '$lib/mapping/vocabulary';
 import { v4 } from 'uuid';
 import { Conductor } from './conductor.svelte';
-import type { Command } from './keys';
-import type { LiveCase } from './live-case.svelte';
+import type { Command, KeyMeaning } from './keys';
+import type { LiveCase, Note } from './live-case.svelte';
 import type { PatientLink } from './patient-link.svelte';
 import { chosenTag, typeTag, type TagEntry } from './tag-entry';
 
@@ -19,6 +19,8 @@ export type Hint =
 	| 'no-item'
 	| 'nothing-to-score'
 	| 'nothing-to-take-back'
+	| 'nothing-to-move'
+	| 'moved'
 	| 'led-elsewhere'
 	| 'score-taken-back'
 	| 'trial-taken-back'
@@ -46,6 +48,8 @@ export class Examiner {
 	#task = $state.raw<TaskLanguage | null>(null);
 	#skipped = $state.raw<ReadonlySet<string>>(new Set());
 	#seed = $state(1);
+	/** what was asked for and is not done yet */
+	#doing: Promise<void> = Promise.resolve();
 	/** what was said in a trial that has no score yet */
 	#said = $state.raw<ReadonlyMap<string, string>>(new Map());
 
@@ -107,7 +111,7 @@ export class Examiner {
 
 	/** Whether the trial that is named large waits for its score. */
 	get isWaiting(): boolean {
-		return this.trial?.effect.language === 'pending';
+		return this.trial !== null && this.trial.score === null;
 	}
 
 	get typed(): string {
@@ -157,14 +161,29 @@ export class Examiner {
 		return this.#said.get(trial.id) ?? trial.score?.said ?? '';
 	}
 
-	type(character: string): void {
-		this.#entry = typeTag(this.#entry, character, performance.now(), this.#tags);
-		this.hint = null;
+	/**
+	 * Does what a key says, once everything asked for before it is done: saving takes a moment, and a key pressed
+	 * meanwhile is for what that leads to.
+	 *
+	 * @param meaning asked when its turn comes: what a key of the number pad means depends on what was done before it
+	 */
+	press(meaning: () => KeyMeaning | { score: Score } | null): Promise<void> {
+		const pressedAt = performance.now();
+		return this.#inTurn(async () => {
+			const what = meaning();
+			if (what === null) return;
+			if ('tag' in what) return this.#type(what.tag, pressedAt);
+			this.hint = null;
+			if ('score' in what) await this.#score(what.score);
+			else await this.#commands[what.do]();
+		});
 	}
 
 	choose(tag: string | null): void {
-		this.#entry = tag === null ? null : { typed: tag, at: -Infinity };
-		this.hint = null;
+		void this.#inTurn(() => {
+			this.#entry = tag === null ? null : { typed: tag, at: -Infinity };
+			this.hint = null;
+		});
 	}
 
 	chooseTask(task: TaskLanguage): void {
@@ -183,42 +202,33 @@ export class Examiner {
 
 	/** Does what a command says; `hint` tells when there was nothing to do. */
 	async do(command: Command): Promise<void> {
-		this.hint = null;
-		try {
-			await this.#commands[command]();
-		} catch {
-			this.hint = 'not-saved';
-		}
+		await this.press(() => ({ do: command }));
 	}
 
 	/** Scores the trial that is named large. */
 	async score(score: Score): Promise<void> {
-		const { trial } = this;
-		this.hint = trial ? null : 'nothing-to-score';
-		if (!trial) return;
-		const said = this.said(trial);
-		try {
-			await this.conductor.score(trial, score, said ? { said } : {});
-		} catch {
-			this.hint = 'not-saved';
-		}
+		await this.press(() => ({ score }));
 	}
 
 	/** Keeps what the patient said: with the score, or until there is one. */
 	async noteSaid(trial: Trial, said: string): Promise<void> {
 		this.field = null;
 		this.#said = new Map(this.#said).set(trial.id, said);
-		if (trial.score && trial.score.said !== said) await this.conductor.addToScore(trial, { said });
+		await this.#inTurn(async () => {
+			const now = this.#live.state.trials.get(trial.id);
+			if (now?.score && (now.score.said ?? '') !== said) await this.conductor.addToScore(now, { said });
+		});
 	}
 
 	#commands: Record<Command, () => Promise<void> | void> = {
 		show: () => this.#show(true),
 		control: () => this.#show(false),
-		intact: () => this.score('intact'),
+		intact: () => this.#score('intact'),
 		'take-back': () => this.#takeBack(),
 		redo: () => this.conductor.redo(),
 		said: () => this.#open('said'),
 		current: () => this.#open('current'),
+		move: () => this.#move(),
 		skip: () => this.skip(),
 		'next-task': () => this.#next('task', 'language'),
 		'next-language': () => this.#next('language', 'task'),
@@ -234,6 +244,36 @@ export class Examiner {
 		shown: () => this.#sayShown(true),
 		'not-shown': () => this.#sayShown(false)
 	};
+
+	/** One thing after the other, in the order they were asked for; one that cannot be saved stops none after it. */
+	#inTurn(work: () => Promise<void> | void): Promise<void> {
+		this.#doing = this.#doing.then(work).catch(() => {
+			this.hint = 'not-saved';
+		});
+		return this.#doing;
+	}
+
+	#type(character: string, at: number): void {
+		this.#entry = typeTag(this.#entry, character, at, this.#tags);
+		this.hint = null;
+	}
+
+	async #score(score: Score): Promise<void> {
+		const { trial } = this;
+		if (!trial) return this.#say('nothing-to-score');
+		const said = this.said(trial);
+		await this.conductor.score(trial, score, said ? { said } : {});
+	}
+
+	/** "That was eight, not seven": the trial that is named large was at the tag that is chosen. */
+	async #move(): Promise<void> {
+		const { trial, tag } = this;
+		if (!trial) return this.#say('nothing-to-move');
+		if (tag === null) return this.#say('choose-a-tag');
+		await this.#live.note(['trial-corrected', { trial: trial.id, tag, stimulated: true }]);
+		this.#entry = null;
+		this.#say('moved');
+	}
 
 	async #show(stimulated: boolean): Promise<void> {
 		const { task, offer, tag } = this;
@@ -286,8 +326,9 @@ export class Examiner {
 			return;
 		}
 		this.conductor.blank();
-		if (lastStimulated) await this.#live.note(['trial-excluded', { trial: lastStimulated.id, reason: 'seizure' }]);
-		await this.#live.note(['pause-opened', { pause: v4(), reason: 'seizure' }]);
+		const opened: Note = ['pause-opened', { pause: v4(), reason: 'seizure' }];
+		if (!lastStimulated) await this.#live.note(opened);
+		else await this.#live.note(['trial-excluded', { trial: lastStimulated.id, reason: 'seizure' }], opened);
 	}
 
 	#step(by: number): void {

@@ -1,5 +1,5 @@
 import type { ErrorKind } from '$lib/mapping/vocabulary';
-import { assignKeys, DEFAULT_COMMAND_KEYS, type Command, type KeyMap } from './keys';
+import { assignKeys, changeCommandKey, commandWith, DEFAULT_COMMAND_KEYS, type Command, type KeyMap } from './keys';
 
 const STORED = 'wordkeep-keys';
 
@@ -21,18 +21,25 @@ export class KeyChoice {
 
 	/** The whole key map for the kinds that a protocol has on. */
 	mapFor(kinds: readonly ErrorKind[]): KeyMap {
-		return assignKeys(kinds, {
-			commands: { ...DEFAULT_COMMAND_KEYS, ...this.#stored.commands },
-			kinds: this.#stored.kinds
-		});
+		return assignKeys(kinds, { commands: this.#commands, kinds: this.#stored.kinds });
 	}
 
+	/** Sets the key of a command; the command that had it takes the old one in exchange. */
 	setCommand(command: Command, key: string): void {
-		this.#write({ ...this.#stored, commands: { ...this.#stored.commands, [command]: key } });
+		this.#write({ ...this.#stored, commands: changeCommandKey(this.#commands, command, key) });
 	}
 
-	setKind(kind: ErrorKind, key: string): void {
-		this.#write({ ...this.#stored, kinds: { ...this.#stored.kinds, [kind]: key } });
+	/** Sets the key of a kind; a kind that had it gets another. The key of a command is refused. */
+	setKind(kind: ErrorKind, key: string): { refused: Command | null } {
+		const command = commandWith(this.#commands, key);
+		if (command) return { refused: command };
+		const others = Object.entries(this.#stored.kinds).filter(([, taken]) => taken !== key);
+		this.#write({ ...this.#stored, kinds: { ...Object.fromEntries(others), [kind]: key } });
+		return { refused: null };
+	}
+
+	get #commands(): Record<Command, string> {
+		return { ...DEFAULT_COMMAND_KEYS, ...this.#stored.commands };
 	}
 
 	usePad(pad: boolean): void {

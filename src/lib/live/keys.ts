@@ -9,6 +9,7 @@ export const COMMANDS = [
 	'redo',
 	'said',
 	'current',
+	'move',
 	'skip',
 	'next-task',
 	'next-language',
@@ -44,6 +45,7 @@ export const DEFAULT_COMMAND_KEYS: Readonly<Record<Command, string>> = {
 	redo: 'shift+backspace',
 	said: ',',
 	current: 'm',
+	move: '.',
 	skip: 'k',
 	'next-task': 'j',
 	'next-language': 'l',
@@ -76,6 +78,25 @@ const PREFERRED: Partial<Record<ErrorKind, string>> = {
 	'wrong-spot': 'o',
 	inattentive: 'q'
 };
+
+/** The command that has a key, or null. */
+export function commandWith(commands: Readonly<Record<Command, string>>, key: string): Command | null {
+	return COMMANDS.find((candidate) => commands[candidate] === key) ?? null;
+}
+
+/**
+ * The command keys with one changed. A key does one thing: the command that had the new key takes the old one.
+ *
+ * @param commands the keys as they are
+ */
+export function changeCommandKey(
+	commands: Readonly<Record<Command, string>>,
+	command: Command,
+	key: string
+): Record<Command, string> {
+	const other = commandWith(commands, key);
+	return { ...commands, ...(other ? { [other]: commands[command] } : {}), [command]: key };
+}
 
 /** Letters, then function keys that no browser needs. */
 const SPARE = [...'hyqiofuwxvtdepsrna', 'f2', 'f3', 'f4', 'f6', 'f7', 'f8', 'f9', 'f10'];
@@ -138,7 +159,7 @@ export function meaningOf(press: Press, map: KeyMap): KeyMeaning | null {
 	if (digit) return { tag: digit[1]! };
 	if (press.shiftKey && /^[a-z]$/i.test(press.key)) return { tag: press.key.toUpperCase() };
 	const name = keyName(press);
-	const command = COMMANDS.find((candidate) => map.commands[candidate] === name);
+	const command = commandWith(map.commands, name);
 	if (command) return { do: command };
 	const kind = ERROR_KINDS.find((candidate) => map.kinds[candidate] === name);
 	return kind ? { score: kind } : null;

@@ -7,6 +7,8 @@ export type Obstacle = 'signed-out' | 'not-allowed' | null;
 const MOST_AT_ONCE = 100;
 const FIRST_WAIT = 250;
 const LONGEST_WAIT = 4000;
+/** A server that has not answered by then is asked again: a cut cable gives no answer at all. */
+const ANSWER_DUE = 10_000;
 
 /**
  * What this device has saved and the server does not have yet. An entry is written to the device's disk before
@@ -95,7 +97,8 @@ export class Outbox {
 		try {
 			while (this.waiting.length > 0 && !this.#closed) {
 				const batch = this.waiting.slice(0, size);
-				const outcome = await this.#send(batch);
+				// Whatever goes wrong, the entries are kept and sent again.
+				const outcome = await this.#send(batch).catch(() => 'again' as const);
 				if (outcome === 'too-much' && batch.length > 1) size = Math.ceil(batch.length / 2);
 				else if (outcome === 'too-much') await this.#setAside(batch[0]!, 'too large to be sent');
 				else if (outcome === 'again') return this.#tryLater();
@@ -119,7 +122,8 @@ export class Outbox {
 			response = await fetch(this.#url, {
 				method: 'POST',
 				headers: { 'content-type': 'application/json' },
-				body: JSON.stringify({ events: batch.map(({ event }) => event) })
+				body: JSON.stringify({ events: batch.map(({ event }) => event) }),
+				signal: AbortSignal.timeout(ANSWER_DUE)
 			});
 		} catch {
 			this.reached = false;

@@ -3,6 +3,9 @@ import type { DisplayCommand, PatientPresence } from '$lib/stimuli/display';
 import { patientChannel, type ChannelMessage, type PatientWord } from './patient-channel';
 import { localNow } from './server-clock.svelte';
 
+/** A message that takes longer than this to get through has no use any more; in milliseconds. */
+const GIVE_UP = 1500;
+
 type WithoutId<T> = T extends unknown ? Omit<T, 'id'> : never;
 
 /** What became of a presentation, by the patient view's own word. */
@@ -24,6 +27,7 @@ export class PatientLink {
 	fault = $state<string | null>(null);
 
 	#code: string;
+	#sending: Promise<void> = Promise.resolve();
 	#channel: BroadcastChannel;
 
 	constructor(code: string, view: string) {
@@ -38,7 +42,8 @@ export class PatientLink {
 	send(message: WithoutId<DisplayCommand>): void {
 		const command = { ...message, id: v7() } as DisplayCommand;
 		this.#channel.postMessage({ to: 'patient', command } satisfies ChannelMessage);
-		void this.#sendByServer(command);
+		// One after the other: an item must not come after the message that takes it off.
+		this.#sending = this.#sending.then(() => this.#sendByServer(command));
 	}
 
 	close(): void {
@@ -50,7 +55,8 @@ export class PatientLink {
 			const response = await fetch(`/api/cases/${this.#code}/display`, {
 				method: 'POST',
 				headers: { 'content-type': 'application/json' },
-				body: JSON.stringify(command)
+				body: JSON.stringify(command),
+				signal: AbortSignal.timeout(GIVE_UP)
 			});
 			this.fault = response.ok ? null : ((await response.json()) as { error: string }).error;
 		} catch {

@@ -1,3 +1,5 @@
+import { EXAMINER } from '$lib/messages/examiner';
+
 /** A patient view as the staff see it. */
 export interface PairedView {
 	id: string;
@@ -70,7 +72,7 @@ export class StaffPairing {
 			this.fault = response.ok ? null : (answer?.error ?? response.statusText);
 			return response.ok ? answer : null;
 		} catch {
-			this.fault = 'The server is not reached. Nothing was changed.';
+			this.fault = EXAMINER.serverGone;
 			return null;
 		}
 	}

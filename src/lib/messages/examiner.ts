@@ -76,7 +76,7 @@ export const EXAMINER = {
 	noTrials: 'No trial yet. Type a tag, then Space.',
 	contested: 'two scores: settle it',
 	contestedBy: (kinds: string) => `scored ${kinds}`,
-	notShown: 'not shown',
+	serverGone: 'The server is not reached. Nothing was changed.',
 	notCounted: 'not counted',
 	waiting: 'waits for its score',
 	askShown: (item: string) => `The patient view has not confirmed “${item}”. Was it shown?`,

@@ -1,5 +1,3 @@
-import type { NotShown } from '$lib/stimuli/not-shown';
-
 /** Words of the patient view: before the run only. While items are shown it has none. */
 
 export const PATIENT_TITLE = 'Patient view';
@@ -59,15 +57,3 @@ export const CARD = {
 };
 
 export const TOUCH_ONCE = 'Touch the screen once';
-
-/** Why an item was not shown, for the examiner. */
-export const NOT_SHOWN_WORDS: Record<NotShown, string> = {
-	late: 'came too late',
-	'too-early': 'its time is wrong',
-	hidden: 'the patient view was hidden',
-	'no-frame': 'the patient view did not draw in time',
-	media: 'picture or sound was not ready',
-	'sound-off': 'sound is still locked: touch the patient’s screen',
-	'taken-off': 'taken off before its time',
-	fault: 'the patient view failed'
-};

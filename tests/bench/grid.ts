@@ -26,7 +26,7 @@ export async function grid({ runs, share }: Plan): Promise<void> {
 	const clinic = await openClinic();
 	const bare = await startBare('push-server', PORTS.bare, { PICTURE: samplePicture() });
 	const browser = await launch();
-	const measured = { wordkeep: [] as Sample[], bare: [] as Sample[] };
+	const measured = { wordkeep: [] as Times[][], bare: [] as Times[][] };
 	try {
 		const examining = await openProfile(browser, clinic, clinic.examiner);
 		const operating = await openProfile(browser, clinic, clinic.surgeon);
@@ -36,7 +36,7 @@ export async function grid({ runs, share }: Plan): Promise<void> {
 		await hearer.goto(`${bare.url}/hearer`);
 		for (let run = 0; run < runs; run++) {
 			const pages = await openCase(clinic, examining, operating);
-			const samples = { wordkeep: [] as Sample, bare: [] as Sample };
+			const samples = { wordkeep: [] as Times[], bare: [] as Times[] };
 			for (let nth = -WARM_UP; nth < A_RUN * share; nth++) {
 				await present(pages, nth + WARM_UP);
 				const ours = await pressToName(pages.examiner, pages.surgeon);
@@ -58,10 +58,23 @@ export async function grid({ runs, share }: Plan): Promise<void> {
 	heading(
 		"grid: key that scores to the ring on the surgeon's screen, beside a bare page: POST, server-sent event, DOM"
 	);
+	const of = (runs: Times[][], what: keyof Times): Sample[] => runs.map((run) => run.map((times) => times[what]));
+	const { wordkeep, bare: control } = measured;
 	distributionColumns('ms');
-	distributionRow('Wordkeep, saved on both sides on the way', measured.wordkeep);
-	distributionRow('bare page, nothing saved', measured.bare);
-	ratioRow('ratio', measured, MOST);
+	distributionRow('Wordkeep, saved on both sides on the way', of(wordkeep, 'whole'));
+	distributionRow('bare page, nothing saved', of(control, 'whole'));
+	ratioRow('ratio', { wordkeep: of(wordkeep, 'whole'), bare: of(control, 'whole') }, MOST);
+	distributionRow('  of which key to message, Wordkeep', of(wordkeep, 'receipt'));
+	distributionRow('  of which key to message, bare', of(control, 'receipt'));
+	distributionRow('  of which message to DOM, Wordkeep', of(wordkeep, 'drawing'));
+	distributionRow('  of which message to DOM, bare', of(control, 'drawing'));
+}
+
+/** Milliseconds from the key to the changed name, and its two parts: before and after the message came in. */
+interface Times {
+	whole: number;
+	receipt: number;
+	drawing: number;
 }
 
 interface Pages {
@@ -96,12 +109,14 @@ function isPresented(data: unknown): boolean {
 	return typeof data === 'string' && data.includes('"type":"trial-presented"');
 }
 
-/** Milliseconds from a press of Enter on one page to the first change of a name on another. */
-async function pressToName(from: Page, to: Page): Promise<number> {
+/** Presses Enter on one page and waits until a name changes on another. */
+async function pressToName(from: Page, to: Page): Promise<Times> {
 	const renamed = told(to, 'renamed');
 	await from.keyboard.press('Enter');
 	await renamed;
-	const { keys } = await takeStamps(from);
-	const { renamed: changes } = await takeStamps(to);
-	return changes[0]! - keys.at(-1)!;
+	const key = (await takeStamps(from)).keys.at(-1)!;
+	const { renamed: changes, received } = await takeStamps(to);
+	const whole = changes[0]! - key;
+	const receipt = received[0]!.at - key;
+	return { whole, receipt, drawing: whole - receipt };
 }

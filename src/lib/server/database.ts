@@ -1,5 +1,5 @@
 import knexModule, { type Knex } from 'knex';
-import type { Database } from 'better-sqlite3';
+import type { Database, Statement } from 'better-sqlite3';
 import config from '../../../knexfile';
 
 /** Migrations travel in the bundle, under the file names that the knex command line records. */
@@ -59,4 +59,15 @@ export async function withConnection<T>(work: (connection: Database) => T | Prom
 	} finally {
 		await db.client.releaseConnection(connection);
 	}
+}
+
+const statements = new WeakMap<Database, Map<string, Statement>>();
+
+/** A statement of a connection, compiled once: for what every request of a run asks. */
+export function prepared<Given extends unknown[], Row>(connection: Database, sql: string): Statement<Given, Row> {
+	const known = statements.get(connection) ?? new Map<string, Statement>();
+	statements.set(connection, known);
+	const statement = known.get(sql) ?? connection.prepare(sql);
+	known.set(sql, statement);
+	return statement as unknown as Statement<Given, Row>;
 }

@@ -1,19 +1,21 @@
 import type { Adapter, DatabaseSession, DatabaseUser } from 'lucia';
 import type { Knex } from 'knex';
+import { prepared, withConnection } from '../database';
 import type { AccountRow, SessionRow } from '../tables';
 import { toAccount } from './accounts';
 
 type Joined = AccountRow & { session_id: string; expires_at: number };
+
+/** Every request asks it. */
+const SESSION = `SELECT accounts.*, sessions.id AS session_id, sessions.expires_at FROM sessions
+	JOIN accounts ON accounts.id = sessions.account_id WHERE sessions.id = ?`;
 
 /** Keeps lucia's sessions in our one connection. */
 export class SessionAdapter implements Adapter {
 	constructor(private readonly db: Knex) {}
 
 	async getSessionAndUser(id: string): Promise<[DatabaseSession | null, DatabaseUser | null]> {
-		const row = await this.db<SessionRow>('sessions')
-			.join('accounts', 'accounts.id', 'sessions.account_id')
-			.where('sessions.id', id)
-			.first<Joined | undefined>('accounts.*', 'sessions.id as session_id', 'sessions.expires_at');
+		const row = await withConnection((connection) => prepared<[string], Joined>(connection, SESSION).get(id));
 		if (!row) return [null, null];
 		return [
 			toSession({ id: row.session_id, account_id: row.id, expires_at: row.expires_at }),

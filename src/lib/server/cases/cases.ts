@@ -2,7 +2,7 @@ import type { Knex } from 'knex';
 import type { Hemisphere } from '$lib/mapping/vocabulary';
 import type { Account } from '../accounts/accounts';
 import type { Role } from '../accounts/roles';
-import { db } from '../database';
+import { db, prepared, withConnection } from '../database';
 import type { AccountRow, CaseRow } from '../tables';
 import { newCaseCode } from './case-code';
 
@@ -47,7 +47,7 @@ export class UnknownAccount extends Error {
  * @throws UnknownAccount, with nothing made
  */
 export async function createCase(given: NewCase, creator: Account): Promise<Case> {
-	return await db.transaction(async (trx) => {
+	const code = await db.transaction(async (trx) => {
 		const row: CaseRow = {
 			code: await unusedCode(trx),
 			hemisphere: given.hemisphere,
@@ -59,8 +59,9 @@ export async function createCase(given: NewCase, creator: Account): Promise<Case
 		};
 		await trx<CaseRow>('cases').insert(row);
 		await writeTeam(trx, row.code, [creator.id, ...given.team]);
-		return toCase(row, await teamsOf(trx, [row.code]));
+		return row.code;
 	});
+	return (await caseByCode(code))!;
 }
 
 async function unusedCode(trx: Knex.Transaction): Promise<string> {
@@ -102,18 +103,23 @@ export async function changeCase(
 	if (Object.keys(row).length > 0) await db<CaseRow>('cases').where({ code }).update(row);
 }
 
+const CASE = 'SELECT * FROM cases WHERE code = ?';
+const TEAMS = `SELECT case_team.case_code, accounts.id, accounts.name, accounts.roles FROM case_team
+	JOIN accounts ON accounts.id = case_team.account_id`;
+const TEAM = `${TEAMS} WHERE case_team.case_code = ? ORDER BY accounts.name`;
+
+/** Asked by every request about a case. */
 export async function caseByCode(code: string): Promise<Case | null> {
-	const row = await db<CaseRow>('cases').where({ code }).first();
-	return row ? toCase(row, await teamsOf(db, [code])) : null;
+	return await withConnection((connection) => {
+		const row = prepared<[string], CaseRow>(connection, CASE).get(code);
+		return row ? toCase(row, teamsIn(prepared<[string], TeamRow>(connection, TEAM).all(code))) : null;
+	});
 }
 
 /** Every case, the newest first. */
 export async function listCases(): Promise<Case[]> {
 	const rows = await db<CaseRow>('cases').orderBy('created_at', 'desc');
-	const teams = await teamsOf(
-		db,
-		rows.map((row) => row.code)
-	);
+	const teams = teamsIn(await db.raw<TeamRow[]>(`${TEAMS} ORDER BY accounts.name`));
 	return rows.map((row) => toCase(row, teams));
 }
 
@@ -123,12 +129,7 @@ export function isOnTeam(found: Case, account: Pick<Account, 'id'>): boolean {
 
 type TeamRow = Pick<AccountRow, 'id' | 'name' | 'roles'> & { case_code: string };
 
-async function teamsOf(knex: Knex, codes: string[]): Promise<Map<string, TeamMember[]>> {
-	const rows = await knex('case_team')
-		.join('accounts', 'accounts.id', 'case_team.account_id')
-		.whereIn('case_team.case_code', codes)
-		.orderBy('accounts.name')
-		.select<TeamRow[]>('case_team.case_code', 'accounts.id', 'accounts.name', 'accounts.roles');
+function teamsIn(rows: TeamRow[]): Map<string, TeamMember[]> {
 	const teams = new Map<string, TeamMember[]>();
 	for (const { case_code, id, name, roles } of rows) {
 		const team = teams.get(case_code) ?? [];

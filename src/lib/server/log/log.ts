@@ -1,7 +1,7 @@
 import type { Database, Statement } from 'better-sqlite3';
 import type { AnyCaseEvent, LogEvent, Receipt } from '$lib/mapping/events';
 import { hub, staffRoom } from '$lib/server/live/hub';
-import { withConnection } from '../database';
+import { prepared, withConnection } from '../database';
 import type { CaseLogRow } from '../tables';
 import { canonicalJson, chainHash, FIRST_PREVIOUS } from './chain';
 
@@ -74,29 +74,27 @@ interface Statements {
 	insert: Statement<[string, number, string, string, string, string, string]>;
 }
 
-const prepared = new WeakMap<Database, Statements>();
-
 function statementsOf(connection: Database): Statements {
-	const known = prepared.get(connection);
-	if (known) return known;
-	const statements: Statements = {
-		head: connection.prepare('SELECT position, hash FROM case_log WHERE case_code = ? ORDER BY position DESC LIMIT 1'),
-		byId: connection.prepare('SELECT position, event FROM case_log WHERE case_code = ? AND id = ?'),
-		insert: connection.prepare(
+	return {
+		head: prepared(
+			connection,
+			'SELECT position, hash FROM case_log WHERE case_code = ? ORDER BY position DESC LIMIT 1'
+		),
+		byId: prepared(connection, 'SELECT position, event FROM case_log WHERE case_code = ? AND id = ?'),
+		insert: prepared(
+			connection,
 			`INSERT INTO case_log (case_code, position, id, received_at, sender, event, hash) VALUES (?, ?, ?, ?, ?, ?, ?)`
 		)
 	};
-	prepared.set(connection, statements);
-	return statements;
 }
 
 /** The entries of a case after a position, in order. */
 export async function entriesAfter(code: string, after: number): Promise<StoredEvent[]> {
 	return await withConnection((connection) =>
-		connection
-			.prepare<[string, number], CaseLogRow>(
-				'SELECT * FROM case_log WHERE case_code = ? AND position > ? ORDER BY position'
-			)
+		prepared<[string, number], CaseLogRow>(
+			connection,
+			'SELECT * FROM case_log WHERE case_code = ? AND position > ? ORDER BY position'
+		)
 			.all(code, after)
 			.map(toEvent)
 	);

@@ -42,7 +42,7 @@ function stamp(): void {
 		}
 	};
 	page.EventSource = class extends EventSource {
-		constructor(url: string) {
+		constructor(url: string | URL) {
 			super(url);
 			for (const name of ['message', 'display']) this.addEventListener(name, receive as EventListener);
 		}

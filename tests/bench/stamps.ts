@@ -34,7 +34,9 @@ function stamp(): void {
 	page.stamps = { keys: [], received: [], painted: [], renamed: [] };
 	addEventListener('keydown', ({ timeStamp }) => page.stamps.keys.push(since(timeStamp)), { capture: true });
 
-	const receive = ({ data }: MessageEvent) => page.stamps.received.push({ at: now(), data: data as unknown });
+	const receive = (event: Event) => {
+		page.stamps.received.push({ at: now(), data: (event as MessageEvent<unknown>).data });
+	};
 	page.BroadcastChannel = class extends BroadcastChannel {
 		constructor(name: string) {
 			super(name);
@@ -44,7 +46,7 @@ function stamp(): void {
 	page.EventSource = class extends EventSource {
 		constructor(url: string | URL) {
 			super(url);
-			for (const name of ['message', 'display']) this.addEventListener(name, receive as EventListener);
+			for (const name of ['message', 'display']) this.addEventListener(name, receive);
 		}
 	};
 	new PerformanceObserver((list) => {

@@ -54,7 +54,7 @@ export function target(text: string, met: boolean): void {
 }
 
 export function milliseconds(value: number): string {
-	return value.toFixed(value < 0.1 ? 4 : 2);
+	return value.toFixed(Math.abs(value) < 0.1 ? 4 : 2);
 }
 
 export function times(value: number): string {

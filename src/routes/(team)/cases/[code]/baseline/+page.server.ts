@@ -2,8 +2,8 @@ import { patientViewsOf } from '$lib/server/live/patient-views';
 import { logOf } from '$lib/server/log/log';
 import type { PageServerLoad } from './$types';
 
-export const load: PageServerLoad = async ({ locals }) => {
-	const { code } = locals.case;
+export const load: PageServerLoad = async ({ params }) => {
+	const { code } = params;
 	const [log, views] = await Promise.all([logOf(code), patientViewsOf(code)]);
 	return { code, log, views };
 };

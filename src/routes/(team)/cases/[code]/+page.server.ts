@@ -4,9 +4,11 @@ import { namesIn } from '$lib/server/cases/names';
 import { logOf } from '$lib/server/log/log';
 import type { PageServerLoad } from './$types';
 
-export const load: PageServerLoad = async ({ locals }) => {
+export const load: PageServerLoad = async ({ locals, params }) => {
 	const account = locals.account!;
-	const { code, team, createdAt } = locals.case;
+	// The framework loads another case only when the load has read which one it is about.
+	const { code } = params;
+	const { team, createdAt } = locals.case;
 	const isAdministrator = account.roles.includes('administrator');
 	const reads = isOnTeam(locals.case, account) && account.roles.some((role) => READERS.includes(role));
 	if (!reads) return { code, team, createdAt, isAdministrator, content: null };

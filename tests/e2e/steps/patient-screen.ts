@@ -20,7 +20,7 @@ export class PatientScreen {
 		await screen.page.getByRole('button', { name: 'Sound and full screen' }).click();
 		await screen.page.getByRole('button', { name: 'Ready' }).click();
 		await expect(desk.patientStatus).toContainText('on screen');
-		await panel.getByRole('button', { name: 'close' }).click();
+		await expect(panel).toHaveCount(0);
 		return screen;
 	}
 

@@ -1,7 +1,7 @@
 import { caseItems, preparedTasks, type KeptItem } from '$lib/mapping/case-items';
 import type { Trial } from '$lib/mapping/case-state';
 import { controlRates } from '$lib/mapping/controls';
-import type { TaskLanguage } from '$lib/mapping/events';
+import type { EventData, TaskLanguage } from '$lib/mapping/events';
 import { nextItem, type Offer } from '$lib/mapping/offer';
 import { shuffle } from '$lib/mapping/shuffle';
 import { compareTags } from '$lib/mapping/sites';
@@ -208,6 +208,28 @@ export class Examiner {
 	/** Scores the trial that is named large. */
 	async score(score: Score): Promise<void> {
 		await this.press(() => ({ score }));
+	}
+
+	/** Takes over the run from the device that leads it. */
+	async takeOver(): Promise<void> {
+		this.hint = null;
+		await this.#inTurn(() => this.conductor.takeOver());
+	}
+
+	/** Corrects what the trial that is named large was. */
+	async correct(change: Omit<EventData['trial-corrected'], 'trial'>): Promise<void> {
+		await this.#noteOnTrial((trial) => ['trial-corrected', { ...change, trial }]);
+	}
+
+	/** Leaves the trial that is named large out of the count. */
+	async exclude(reason: string): Promise<void> {
+		await this.#noteOnTrial((trial) => ['trial-excluded', { trial, reason }]);
+	}
+
+	#noteOnTrial(note: (trial: string) => Note): Promise<void> {
+		return this.#inTurn(async () => {
+			if (this.trial) await this.#live.note(note(this.trial.id));
+		});
 	}
 
 	/** Keeps what the patient said: with the score, or until there is one. */

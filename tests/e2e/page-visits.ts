@@ -35,7 +35,12 @@ export class DemoClinic {
 
 	/** A new page of somebody; with null on a device that nobody has used. */
 	async page(role: RoleName | null): Promise<Page> {
-		if (role === null) return await this.browser.newPage({ baseURL: this.server.url });
+		if (role === null) {
+			const unused = await this.browser.newContext({ baseURL: this.server.url });
+			const page = await unused.newPage();
+			page.once('close', () => void unused.close());
+			return page;
+		}
 		let device = this.#devices.get(role);
 		if (!device) {
 			device = await this.browser.newContext({ baseURL: this.server.url });
@@ -118,13 +123,13 @@ async function round(page: Page, clinic: DemoClinic): Promise<PatientCase> {
 	return found;
 }
 
-async function desk(page: Page, clinic: DemoClinic): Promise<void> {
-	await page.goto(`/cases/${clinic.prepared}/examiner`);
+async function desk(page: Page, clinic: DemoClinic, code = clinic.prepared): Promise<void> {
+	await page.goto(`/cases/${code}/examiner`);
 	await expect(page.getByText('saved here', { exact: true }).locator('circle[fill="currentColor"]')).toBeVisible();
 }
 
 async function trial(page: Page, clinic: DemoClinic): Promise<void> {
-	await desk(page, clinic);
+	await desk(page, clinic, (await clinic.newCase()).code);
 	await page.keyboard.press('c');
 	await expect(page.getByRole('main').getByText('now', { exact: true })).toBeVisible();
 }
@@ -357,7 +362,7 @@ export const VISITS: Record<string, PageVisits> = {
 	'/(team)/cases/[code]/examiner': {
 		lighting: 'theatre',
 		states: [
-			{ name: 'plain', role: 'examiner', show: desk },
+			{ name: 'plain', role: 'examiner', show: (page, clinic) => desk(page, clinic) },
 			{
 				name: 'pairing',
 				role: 'examiner',
@@ -395,6 +400,7 @@ export const VISITS: Record<string, PageVisits> = {
 				show: async (page, clinic) => {
 					await trial(page, clinic);
 					await page.keyboard.press('n');
+					await expect(page.getByRole('main').getByText(/^next, /)).toBeVisible();
 					await page.keyboard.press('ArrowUp');
 					await expect(page.getByRole('group', { name: 'correct this trial' })).toBeVisible();
 				}
@@ -403,7 +409,7 @@ export const VISITS: Record<string, PageVisits> = {
 				name: 'a seizure',
 				role: 'examiner',
 				show: async (page, clinic) => {
-					await desk(page, clinic);
+					await desk(page, clinic, (await clinic.newCase()).code);
 					await page.keyboard.press('z');
 					await expect(page.getByText('Seizure: trials do not count')).toBeVisible();
 				}
@@ -468,7 +474,7 @@ export const VISITS: Record<string, PageVisits> = {
 					await addSomebody(page);
 					await page.getByRole('textbox', { name: 'Name' }).fill('Lin Newcomer');
 					await page.getByLabel('E-mail address').fill('lin@demo.invalid');
-					await page.getByLabel('surgeon').check();
+					await page.getByRole('checkbox', { name: /^surgeon/ }).check();
 					await submit(page, 'Add and make a link');
 					await expect(page.getByRole('heading', { name: 'One-time link' })).toBeVisible();
 				}

@@ -255,7 +255,8 @@ test.describe('items', () => {
 
 	test('while the patient counts the prompt stays, and each press marks a stimulation', async ({ context }) => {
 		const series = [
-			{ id: 'up', answer: 'one, two', accepted: [], prompts: [{ kind: 'text' as const, text: 'Count' }] }
+			{ id: 'up', answer: 'one, two', accepted: [], prompts: [{ kind: 'text' as const, text: 'Count' }] },
+			{ id: 'days', answer: 'Monday', accepted: [], prompts: [{ kind: 'text' as const, text: 'Say the days' }] }
 		];
 		const { found, desk } = await openDesk(context, { sets: [{ task: 'counting', language: 'en', items: series }] });
 		const screen = await PatientScreen.pair(context, desk);
@@ -269,15 +270,19 @@ test.describe('items', () => {
 			await desk.score('a');
 			await screen.shows('Count');
 		}
+		await desk.press('k');
+		await desk.trial('3', 'Enter');
+		await screen.shows('Say the days');
 		await desk.press('b');
 		await screen.isBlank();
 		await desk.allSaved();
-		expect((await found.presented()).map(({ tag, showAt }) => [tag, showAt !== undefined])).toEqual([
-			['1', true],
-			['2', false],
-			['7', false]
+		expect((await found.presented()).map(({ tag, item, showAt }) => [tag, item, showAt !== undefined])).toEqual([
+			['1', 'up', true],
+			['2', 'up', false],
+			['7', 'up', false],
+			['3', 'days', true]
 		]);
-		expect(await found.entries('trial-onset')).toHaveLength(1);
+		expect(await found.entries('trial-onset')).toHaveLength(2);
 	});
 });
 

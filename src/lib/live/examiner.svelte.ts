@@ -2,10 +2,10 @@ import { caseItems, preparedTasks, type KeptItem } from '$lib/mapping/case-items
 import type { Trial } from '$lib/mapping/case-state';
 import { controlRates } from '$lib/mapping/controls';
 import type { EventData, TaskLanguage } from '$lib/mapping/events';
-import { nextItem, type Offer } from '$lib/mapping/offer';
+import { nextItem, stayingItem, type Offer } from '$lib/mapping/offer';
 import { shuffle } from '$lib/mapping/shuffle';
 import { compareTags } from '$lib/mapping/sites';
-import type { ErrorKind, Score } from '$lib/mapping/vocabulary';
+import { RUNNING_TASKS, type ErrorKind, type Score } from '$lib/mapping/vocabulary';
 import { v4 } from 'uuid';
 import { Conductor } from './conductor.svelte';
 import type { Command, KeyMeaning } from './keys';
@@ -126,7 +126,13 @@ export class Examiner {
 	/** The item that comes next. */
 	get offer(): Offer | null {
 		const { task } = this;
-		return task ? nextItem(this.#live.state, this.#ordered, { ...task, tag: this.tag }, this.#skipped) : null;
+		if (!task) return null;
+		const { state } = this.#live;
+		if (RUNNING_TASKS.includes(task.task)) {
+			const showing = this.conductor.showing?.item ?? null;
+			return stayingItem(state, this.#items, task, showing, this.#skipped);
+		}
+		return nextItem(state, this.#ordered, { ...task, tag: this.tag }, this.#skipped);
 	}
 
 	get lastStimulated(): Trial | null {

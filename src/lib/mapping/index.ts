@@ -21,7 +21,7 @@ export {
 export { sites, tagResults, compareTags, repeatedPresentations, type SiteRow, type TagResult } from './sites';
 export { controlRates, isControl, type ControlRate } from './controls';
 export { caseItems, preparedTasks, type KeptItem } from './case-items';
-export { nextItem, type Offer } from './offer';
+export { nextItem, stayingItem, type Offer } from './offer';
 export { shuffle } from './shuffle';
 export { DEFAULT_PROTOCOL, type Protocol } from './protocol';
 export * from './events';

@@ -1,4 +1,4 @@
-import type { CaseState } from './case-state';
+import { trialsInOrder, type CaseState } from './case-state';
 import type { KeptItem } from './case-items';
 import type { TaskLanguage } from './events';
 
@@ -37,4 +37,29 @@ export function nextItem(
 		(a, b) => (shown.get(a.id) ?? 0) - (shown.get(b.id) ?? 0)
 	);
 	return item ? { item, again: fresh.length === 0 } : null;
+}
+
+/**
+ * The prompt of a running task (counting, free speech): it stays while one stimulation follows the other, and comes
+ * back when the task is taken up again; only skipping it brings the next.
+ *
+ * @param items in the order they were copied
+ * @param showing id of the item that stands on the patient view, or null
+ */
+export function stayingItem(
+	state: CaseState,
+	items: readonly KeptItem[],
+	{ task, language }: TaskLanguage,
+	showing: string | null,
+	skipped: ReadonlySet<string>
+): Offer | null {
+	const pool = items.filter((item) => item.kept && item.task === task && item.language === language);
+	const wanted = pool.filter((item) => !skipped.has(item.id));
+	const candidates = wanted.length > 0 ? wanted : pool;
+	const last = trialsInOrder(state).findLast(
+		(trial) => trial.task === task && trial.language === language && candidates.some(({ id }) => id === trial.item)
+	);
+	const item =
+		candidates.find(({ id }) => id === showing) ?? candidates.find(({ id }) => id === last?.item) ?? candidates[0];
+	return item ? { item, again: false } : null;
 }

@@ -4,7 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { caseItems, preparedTasks } from '../../../src/lib/mapping/case-items';
 import type { EventData, LogEvent } from '../../../src/lib/mapping/events';
 import { fold } from '../../../src/lib/mapping/fold';
-import { nextItem } from '../../../src/lib/mapping/offer';
+import { nextItem, stayingItem } from '../../../src/lib/mapping/offer';
 import { shuffle } from '../../../src/lib/mapping/shuffle';
 import { entry, received } from './entry';
 
@@ -224,5 +224,40 @@ describe('a shuffled order', () => {
 		// The sums of rows and columns are fixed: 64 degrees of freedom. Cells of one permutation exclude each other, which
 		// widens every free direction by 9/8 (the variance of a cell is 1/8 of its share there, not 1/9).
 		expect((chiSquare(counts) * 8) / 9).toBeLessThan(LIMIT_64);
+	});
+});
+
+describe('the prompt of a running task', () => {
+	const counting = { task: 'counting', language: 'en' };
+	const series = copied(['up', 'down', 'days'], counting);
+	const inCounting = { ...counting };
+
+	function prompt(entries: LogEvent[], showing: string | null, skipped: string[] = []) {
+		const state = caseOf(...entries);
+		return stayingItem(state, caseItems(state), counting, showing, new Set(skipped))?.item.id ?? null;
+	}
+
+	it('is the first that was copied before any trial', () => {
+		expect(prompt([series], null)).toBe('up');
+	});
+
+	it('is the one that stands on the patient view', () => {
+		expect(prompt([series, shown('up', '1', inCounting)], 'days')).toBe('days');
+	});
+
+	it('is the one of the last trial when the task is taken up again', () => {
+		const entries = [series, shown('up', '1', inCounting), shown('down', '2', inCounting), shown('dog', '3')];
+		expect(prompt(entries, 'dog')).toBe('down');
+	});
+
+	it('is the next one once it is skipped, and begins again when all are', () => {
+		expect(prompt([series, shown('up', '1', inCounting)], 'up', ['up'])).toBe('down');
+		expect(prompt([series], null, ['up', 'down', 'days'])).toBe('up');
+	});
+
+	it('is never one that was dropped, nor of another language', () => {
+		const dropped = decided('up', false, counting);
+		expect(prompt([series, dropped], 'up')).toBe('down');
+		expect(prompt([copied(['eins'], { ...counting, language: 'de' })], null)).toBeNull();
 	});
 });

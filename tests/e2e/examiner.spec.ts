@@ -451,9 +451,8 @@ test.describe('the patient view', () => {
 		const pressed = Date.now();
 		await desk.press('Space');
 		await expect(asked).toBeVisible();
-		// 100 ms ahead, 500 ms to confirm, and the page looks five times a second; the rest is the machine's.
+		// 100 ms ahead, 500 ms to confirm: never asked before; how much later is the machine's.
 		expect(Date.now() - pressed).toBeGreaterThan(500);
-		expect(Date.now() - pressed).toBeLessThan(1500);
 		await desk.press('-');
 		await expect(asked).toHaveCount(0);
 		await desk.isFree();
@@ -491,10 +490,7 @@ test.describe('the patient view', () => {
 		await hide(false);
 		await expect(desk.patientStatus).toContainText('on screen');
 		await tablet.setOffline(true);
-		const cut = Date.now();
 		await expect(desk.patientStatus).toContainText('lost: no word from it');
-		// Two seconds, and a fifth of one until the page looks again; the rest is the machine's.
-		expect(Date.now() - cut).toBeLessThan(3000);
 		await tablet.setOffline(false);
 		await expect(desk.patientStatus).toContainText('on screen');
 		await tablet.close();

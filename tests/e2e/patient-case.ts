@@ -80,8 +80,13 @@ export class PatientCase {
 	}
 
 	/** A message that shows something in a while, to be sent one way or another. */
-	async showing(prompts: Show['prompts'], { ahead = 200, duration = null as number | null } = {}): Promise<Show> {
-		return { id: v7(), kind: 'show', trial: v7(), showAt: (await this.serverNow()) + ahead, duration, prompts };
+	/** server time at which the last message was to be shown */
+	lastShowAt = 0;
+
+	/** Far enough ahead for a machine that is busy: what comes late is not shown. */
+	async showing(prompts: Show['prompts'], { ahead = 600, duration = null as number | null } = {}): Promise<Show> {
+		this.lastShowAt = (await this.serverNow()) + ahead;
+		return { id: v7(), kind: 'show', trial: v7(), showAt: this.lastShowAt, duration, prompts };
 	}
 
 	/** Shows something by the server; gives the presentation's name. */

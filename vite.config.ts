@@ -1,9 +1,17 @@
 import { sveltekit } from '@sveltejs/kit/vite';
+import { svelte, vitePreprocess } from '@sveltejs/vite-plugin-svelte';
 import tailwindcss from '@tailwindcss/vite';
 import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
 	plugins: [tailwindcss(), sveltekit()],
+	// The patient view's script is built apart, as workers are, so that it shares no chunk with the staff's pages.
+	worker: {
+		format: 'es',
+		plugins: () => [
+			svelte({ configFile: false, preprocess: vitePreprocess(), compilerOptions: { css: 'injected', runes: true } })
+		]
+	},
 	test: {
 		environment: 'node',
 		env: { DATA_DIR: ':memory:' },

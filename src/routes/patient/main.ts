@@ -1,0 +1,4 @@
+import { mount } from 'svelte';
+import PatientApp from './PatientApp.svelte';
+
+mount(PatientApp, { target: document.getElementById('patient')! });

@@ -5,9 +5,10 @@ export class MediaCache {
 	#pictures = new Map<string, Promise<string>>();
 	#sounds = new Map<string, Promise<AudioBuffer>>();
 	#here = new Set<string>();
-	#output: Promise<SoundOutput>;
+	#output: () => Promise<SoundOutput>;
 
-	constructor(output: Promise<SoundOutput>) {
+	/** @param output asked for when the first sound is to be decoded */
+	constructor(output: () => Promise<SoundOutput>) {
 		this.#output = output;
 	}
 
@@ -30,7 +31,7 @@ export class MediaCache {
 
 	async sound(file: string): Promise<AudioBuffer> {
 		return await once(this.#sounds, file, async () => {
-			const output = await this.#output;
+			const output = await this.#output();
 			const buffer = await output.decode(await (await fetchMedia(file)).arrayBuffer());
 			this.#here.add(file);
 			return buffer;

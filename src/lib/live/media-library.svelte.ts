@@ -18,16 +18,19 @@ export class MediaLibrary {
 	/** loaded and decoded, of how many */
 	ready = $state(0);
 	total = $state(0);
-	/** whether the case has anything to listen to; known after the first list */
-	hasSounds = $state(false);
+	/** whether the case has anything to listen to; null before the first list */
+	hasSounds = $state<boolean | null>(null);
 
 	#cache: MediaCache;
 	#wanted: Wanted = { pictures: [], sounds: [] };
 	#round = 0;
 	#side: () => number;
 
-	/** @param side in CSS pixels, at which pictures will be shown */
-	constructor(output: Promise<SoundOutput>, side: () => number) {
+	/**
+	 * @param output asked for when the first sound is to be decoded
+	 * @param side in CSS pixels, at which pictures will be shown
+	 */
+	constructor(output: () => Promise<SoundOutput>, side: () => number) {
 		this.#cache = new MediaCache(output);
 		this.#side = side;
 	}

@@ -39,7 +39,7 @@ export class PatientView {
 	/** a word was sent to the loudspeaker to be tried */
 	tried = $state(false);
 	/** a sound will need a touch first, and no item has come yet that would be disturbed by saying so */
-	asksTouch = $derived.by(() => this.running && !this.unlocked && this.media.hasSounds && !this.#shown);
+	asksTouch = $derived.by(() => this.running && !this.unlocked && this.media.hasSounds === true && !this.#shown);
 	/** what is shown to find this window among others, or null */
 	called = $state<string | null>(null);
 	readonly media: MediaLibrary;
@@ -48,7 +48,15 @@ export class PatientView {
 	#shown = $state(false);
 	#device = deviceName('patient');
 	#clock = new ServerClock();
-	#sound = SoundOutput.load();
+	#loadedSound: Promise<SoundOutput> | null = null;
+	/** Loaded once the case turns out to have something to listen to. */
+	#sound = (): Promise<SoundOutput> => {
+		this.#loadedSound ??= SoundOutput.load().then((sound) => {
+			sound.follow((running) => (this.unlocked = running));
+			return sound;
+		});
+		return this.#loadedSound;
+	};
 	#seen = new SeenMessages();
 	#presenter: Presenter | null = null;
 	#stage: Stage | null = null;
@@ -105,7 +113,6 @@ export class PatientView {
 		);
 		void this.media.load();
 		void this.screen.keepAwake();
-		void this.#unlockWithoutTouch();
 	}
 
 	stop(): void {
@@ -126,13 +133,24 @@ export class PatientView {
 	async unlock(): Promise<void> {
 		void this.screen.keepAwake();
 		const filled = this.screen.fullScreen ? Promise.resolve() : this.screen.fill();
-		this.unlocked = await (await this.#sound).unlock();
+		// A case without sounds has nothing to unlock but the screen.
+		this.unlocked = this.media.hasSounds === false || (await (await this.#sound()).unlock());
 		await filled;
+	}
+
+	/**
+	 * Call when it is known whether the case has sounds. Some browsers let sound through without a touch, for one after
+	 * a reload.
+	 */
+	async unlockWithoutTouch(): Promise<void> {
+		if (this.media.hasSounds === true) this.unlocked = await (await this.#sound()).unlock();
+		else if (this.media.hasSounds === false && this.running) this.unlocked = true;
 	}
 
 	/** Plays a word of the case, or a tone, to try the loudspeaker. */
 	async tryLoudspeaker(): Promise<void> {
-		const sound = await this.#sound;
+		if (this.media.hasSounds === false) return;
+		const sound = await this.#sound();
 		const word = (await this.media.anySound()) ?? sound.tone();
 		this.tried = sound.running;
 		sound.play(word, performance.now());
@@ -230,13 +248,6 @@ export class PatientView {
 	#say(word: PatientWord): void {
 		if (this.#stopped) return;
 		this.#channel.postMessage({ to: 'staff', word } satisfies ChannelMessage);
-	}
-
-	/** Some browsers let sound through without a touch, for one after a reload. */
-	async #unlockWithoutTouch(): Promise<void> {
-		const sound = await this.#sound;
-		sound.follow((running) => (this.unlocked = running));
-		this.unlocked = await sound.unlock();
 	}
 
 	async #askWhetherEnded(): Promise<void> {

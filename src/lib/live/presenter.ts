@@ -24,7 +24,8 @@ interface Waiting {
 interface Ports {
 	clock: ServerClock;
 	media: MediaLibrary;
-	sound: Promise<SoundOutput>;
+	/** asked for when something is to be heard */
+	sound: () => Promise<SoundOutput>;
 	stage: Stage;
 	/** takes what became of each presentation, once */
 	report(onset: EventData['trial-onset']): void;
@@ -90,15 +91,16 @@ export class Presenter {
 	async #prepare(waiting: Waiting): Promise<void> {
 		const { media, sound } = this.#ports;
 		const { prompts, trial } = waiting.show;
+		const files = prompts.flatMap((prompt) => (prompt.kind === 'sound' ? [prompt.file] : []));
 		const [elements, buffers, output] = await Promise.all([
-			makeElements(prompts, trial, (files) => media.picture(files)),
-			Promise.all(prompts.flatMap((prompt) => (prompt.kind === 'sound' ? [media.sound(prompt.file)] : []))),
-			sound
+			makeElements(prompts, trial, (pictures) => media.picture(pictures)),
+			Promise.all(files.map((file) => media.sound(file))),
+			files.length > 0 ? sound() : null
 		]);
 		if (!this.#waiting.includes(waiting)) return;
-		if (buffers.length > 0 && !output.running) return this.#drop(waiting, 'sound-off');
+		if (output && !output.running) return this.#drop(waiting, 'sound-off');
 		waiting.elements = elements;
-		waiting.playing = buffers.map((buffer) => output.play(buffer, waiting.due));
+		waiting.playing = output ? buffers.map((buffer) => output.play(buffer, waiting.due)) : [];
 	}
 
 	#frame = (stamp: number): void => {

@@ -66,7 +66,7 @@ export const EXAMINER = {
 	control: 'control',
 	showAt: (tag: string) => `show item, tag ${tag}`,
 	markAt: (tag: string) => `mark stimulation, tag ${tag}`,
-	showNoTag: 'show item: type a tag first',
+	showNoTag: 'show item: type a tag',
 	again: 'seen at this tag before: no other item remains',
 	sameTag: 'Same tag as the last stimulation. Another should come between: repeats cause afterdischarges.',
 	tooSoon: (seconds: string) => `Less than ${seconds} s since the last stimulation.`,

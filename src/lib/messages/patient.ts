@@ -24,6 +24,7 @@ export const SET_UP = {
 	unlock: 'Sound and full screen',
 	unlockHint: 'One touch. A word is played to try the loudspeaker.',
 	played: 'A word was played.',
+	noSounds: 'This case has nothing to listen to.',
 	notPlayed: 'This browser holds the sound back. Touch again.',
 	again: 'Play again',
 	size: 'Picture size',

@@ -16,22 +16,27 @@ export async function launch(): Promise<Browser> {
 	});
 }
 
-function objects() {
+function itemSet(id: string) {
 	const { sets } = JSON.parse(readFileSync(`${MEDIA}/catalogue.json`, 'utf8')) as Catalogue;
-	return sets.find(({ id }) => id === 'objects-en')!;
+	const found = sets.find((set) => set.id === id);
+	if (!found) throw new Error(`no item set ${id}`);
+	return found;
 }
 
 /** A picture as a patient sees it, for the bare page. */
 export function samplePicture(): string {
-	const prompt = objects().items[0]!.prompts.find(({ kind }) => kind === 'picture');
+	const prompt = itemSet('objects-en').items[0]!.prompts.find(({ kind }) => kind === 'picture');
 	if (prompt?.kind !== 'picture') throw new Error('the first object has no picture');
 	return `${MEDIA}/${prompt.files.at(-1)!.file}`;
 }
 
-/** A case ready for its first trial: 24 tags are laid, and it has the pictures of objects. */
-export async function prepareCase(clinic: Clinic): Promise<string> {
+/** A case ready for its first trial: 24 tags are laid, and it has item sets, the pictures of objects unless said. */
+export async function prepareCase(clinic: Clinic, sets: string[] = ['objects-en']): Promise<string> {
 	const code = await clinic.newCase();
-	const events = [made('items-copied', copyForCase(objects())), ...TAGS.map((tag) => made('tag-placed', { tag }))];
+	const events = [
+		...sets.map((id) => made('items-copied', copyForCase(itemSet(id)))),
+		...TAGS.map((tag) => made('tag-placed', { tag }))
+	];
 	const answer = await clinic.examiner.client.post(`/api/cases/${code}/events`, { events });
 	if (answer.status !== 200) throw new Error(`preparing the case was answered with ${answer.status}: ${answer.text}`);
 	return code;

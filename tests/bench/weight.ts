@@ -8,7 +8,7 @@ import { launch, openProfile, pair, prepareCase } from './theatre';
 
 /** No script has come for so long: the page has all it needs to be used. */
 const QUIET = 1500;
-const MOST = { patient: 1.5, examiner: 3 };
+const MOST = { patient: 1.5, 'patient, with sounds': 1.5, examiner: 3 };
 
 interface Weight {
 	files: number;
@@ -24,6 +24,7 @@ export async function weight(): Promise<void> {
 	const browser = await launch();
 	try {
 		const code = await prepareCase(clinic);
+		const withSounds = await prepareCase(clinic, ['objects-en', 'repetition-en']);
 		const staff = await openProfile(browser, clinic, clinic.examiner);
 		const { url } = clinic.server;
 		const visit = (path: string) => (page: Page) => page.goto(url + path);
@@ -35,7 +36,8 @@ export async function weight(): Promise<void> {
 			['baseline', staff, visit(`/cases/${code}/baseline`)],
 			['examiner', staff, visit(`/cases/${code}/examiner`)],
 			['surgeon', staff, visit(`/cases/${code}/surgeon`)],
-			['patient', patient, (page) => pair(page, clinic, code)]
+			['patient', patient, (page) => pair(page, clinic, code)],
+			['patient, with sounds', await browser.newContext(), (page) => pair(page, clinic, withSounds)]
 		];
 		const floor = await weigh(await browser.newContext(), (page) => page.goto(empty.url));
 		heading('weight: scripts that a view loads before it can be used, beside an empty page of the same framework');

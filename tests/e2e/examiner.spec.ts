@@ -271,7 +271,7 @@ test.describe('items', () => {
 			await screen.shows('Count');
 		}
 		await desk.press('k');
-		await desk.trial('3', 'Enter');
+		await desk.trial('12', 'Enter');
 		await screen.shows('Say the days');
 		await desk.press('b');
 		await screen.isBlank();
@@ -280,7 +280,7 @@ test.describe('items', () => {
 			['1', 'up', true],
 			['2', 'up', false],
 			['7', 'up', false],
-			['3', 'days', true]
+			['12', 'days', true]
 		]);
 		expect(await found.entries('trial-onset')).toHaveLength(2);
 	});

@@ -70,20 +70,28 @@ export class PatientCase {
 
 	/** Sends a message by the server; makes an id where it has none. */
 	async send(message: WithoutId<DisplayCommand> | DisplayCommand): Promise<{ listening: number }> {
-		const sent = await this.client.post(`/api/cases/${this.code}/display`, { id: v7(), ...message });
-		if (sent.status !== 200) throw new Error(sent.text);
-		return sent.body;
+		const command = { id: v7(), ...message };
+		for (let tries = 0; tries < 200; tries++) {
+			const sent = await this.client.post(`/api/cases/${this.code}/display`, command);
+			if (sent.status !== 200) throw new Error(sent.text);
+			// A screen that was just paired begins to listen a moment later.
+			if (sent.body.listening > 0) return sent.body;
+			await new Promise((done) => setTimeout(done, 50));
+		}
+		throw new Error('no patient view listens');
 	}
 
 	async lay(layout: Partial<Layout>): Promise<void> {
 		await this.send({ kind: 'layout', layout: { ...DEFAULT_LAYOUT, ...layout } });
 	}
 
-	/** A message that shows something in a while, to be sent one way or another. */
 	/** server time at which the last message was to be shown */
 	lastShowAt = 0;
 
-	/** Far enough ahead for a machine that is busy: what comes late is not shown. */
+	/**
+	 * A message that shows something in a while, to be sent one way or another: far enough ahead for a machine that is
+	 * busy, since what comes late is not shown.
+	 */
 	async showing(prompts: Show['prompts'], { ahead = 600, duration = null as number | null } = {}): Promise<Show> {
 		this.lastShowAt = (await this.serverNow()) + ahead;
 		return { id: v7(), kind: 'show', trial: v7(), showAt: this.lastShowAt, duration, prompts };

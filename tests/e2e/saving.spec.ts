@@ -128,8 +128,11 @@ test('an answer that is lost after the server stored it stores once', async ({ c
 test('an entry that the server refuses is set aside in sight, and the others go on', async ({ context }) => {
 	const found = await prepare();
 	const desk = await Desk.open(context, clinic.examiner, found);
-	// As the server does: one bad entry refuses its whole batch and is named.
+	// As the server does: one bad entry refuses its whole batch and is named. A cut network does not stop what a route
+	// answers, so the route has to be cut as well.
+	let isCut = false;
 	await desk.page.route('**/events', async (route) => {
+		if (isCut) return await route.abort('internetdisconnected');
 		const { events } = route.request().postDataJSON() as { events: LogEvent[] };
 		const index = events.findIndex(({ data }) => 'score' in data && data.score === 'perseveration');
 		if (index < 0) return await route.continue();
@@ -137,12 +140,14 @@ test('an entry that the server refuses is set aside in sight, and the others go 
 	});
 	await desk.trial('1', 'n');
 	await desk.allSaved();
+	isCut = true;
 	await context.setOffline(true);
 	await desk.trial('2', 'Enter');
 	await desk.show('7');
 	await desk.press('v');
 	await expect(desk.lastTrials.first()).toContainText('perseveration');
 	await desk.trial('12', 'n');
+	isCut = false;
 	await context.setOffline(false);
 	await desk.allSaved();
 

@@ -66,6 +66,8 @@ test('a run goes on without the network, and a killed browser loses and doubles 
 	await expect(desk.page.getByText(/Was it shown\?/)).toHaveCount(0);
 	await expect(desk.tagButton('12')).toHaveAccessibleName('tag 12, open, 1 of 1 disturbed');
 	await desk.press('Backspace');
+	// Before that is done no trial is named large either.
+	await desk.isNow('12');
 	await desk.score('p');
 	expect(told(await found.log())).toEqual(['show 1', '1 intact']);
 
